@@ -1,0 +1,48 @@
+#pragma once
+// The .ebbline file: readable JSON, keys with units, stable ids and order. One field table (fields.h) drives reading,
+// writing and the schema.
+
+#include <cstddef>
+#include <filesystem>
+#include <map>
+#include <string>
+#include <string_view>
+#include <vector>
+
+#include "core/loop/loop.h"
+#include "core/text/remark.h"
+
+namespace ebbline::loop {
+
+/// What reading gave. `loop` may be used only if usable(); all content faults are listed, not just the first.
+struct Reading {
+  Loop loop;
+  std::vector<text::Remark> remarks;
+  std::map<std::string, int> lines;  ///< Line (from 1) of each JSON pointer, so that later remarks can name it.
+  bool usable() const { return !text::anyFault(remarks); }
+};
+
+/// Largest file read [bytes]; a larger one is refused before it is loaded.
+inline constexpr std::size_t kMostFileBytes = 64U * 1024U * 1024U;
+/// Deepest nesting read.
+inline constexpr int kMostDepth = 64;
+
+/// Reads the text of a file. Never throws, never crashes on any bytes; memory is bounded by a multiple of the size.
+Reading readLoop(std::string_view text);
+
+/// Reads a file from disk; size is checked first.
+Reading readLoopFile(const std::filesystem::path& path);
+
+/// The text of the file: the same loop always gives the same bytes, and readLoop gives the same loop back.
+std::string writeLoop(const Loop& loop);
+
+/// Writes beside the old file and renames, so that the file on disk is always whole. Empty = done.
+std::vector<text::Remark> writeLoopFile(const Loop& loop, const std::filesystem::path& path);
+
+/// JSON Schema (draft 2020-12 wording kept to draft 7) of the file, made from the same field table.
+std::string schemaText();
+
+/// JSON pointer of a thing, e.g. "/terminals/3", or "" when the id is unknown: joins remarks about ids to lines.
+std::string pointerOf(const Loop& loop, Id id);
+
+}  // namespace ebbline::loop
