@@ -12,12 +12,14 @@ namespace {
 namespace fs = std::filesystem;
 
 // In order: a module may use itself and those before it.
-const std::vector<std::string> kCoreOrder = {
-    "core/text",           "core/parallel",        "core/quantity",      "core/fluid",         "core/catalogue",
-    "core/part",           "core/loop",            "core/edit",          "core/network",       "core/heat",
-    "core/control",        "core/proof",           "core/study/sweep",   "core/study/size",    "core/study/balance",
-    "core/study/year",     "core/study/places",    "core/study/inference", "core/study/pumps", "core/study/options",
-    "core/study/match",    "core/finding",         "core/sheet"};
+const std::vector<std::string> kCoreOrder = {"core/text",        "core/parallel",      "core/quantity",
+                                             "core/fluid",       "core/catalogue",     "core/part",
+                                             "core/loop",        "core/edit",          "core/network",
+                                             "core/heat",        "core/control",       "core/proof",
+                                             "core/study/sweep", "core/study/size",    "core/study/balance",
+                                             "core/study/year",  "core/study/places",  "core/study/inference",
+                                             "core/study/pumps", "core/study/options", "core/study/match",
+                                             "core/finding",     "core/sheet"};
 const std::vector<std::string> kUiOrder = {"ui/theme",  "ui/work",   "ui/document", "ui/plot",
                                            "ui/canvas", "ui/report", "ui/page",     "ui/shell"};
 
@@ -31,9 +33,13 @@ struct SourceLine {
   std::string text;
 };
 
-std::string at(const SourceLine& line) { return line.file + ":" + std::to_string(line.number) + ": "; }
+std::string at(const SourceLine& line) {
+  return line.file + ":" + std::to_string(line.number) + ": ";
+}
 
-bool startsWith(const std::string& text, const std::string& start) { return text.rfind(start, 0) == 0; }
+bool startsWith(const std::string& text, const std::string& start) {
+  return text.rfind(start, 0) == 0;
+}
 
 std::optional<std::size_t> rankIn(const std::vector<std::string>& order, const std::string& path) {
   for (std::size_t i = 0; i < order.size(); ++i)
@@ -45,9 +51,12 @@ void checkOrder(const std::vector<std::string>& order, const SourceLine& line, c
                 std::vector<std::string>& breaches) {
   const auto own = rankIn(order, line.file);
   const auto other = rankIn(order, included);
-  if (!own) breaches.push_back(at(line) + "lies in no module of the list");
-  else if (!other) breaches.push_back(at(line) + "includes " + included + ", which lies in no module of the list");
-  else if (*other > *own) breaches.push_back(at(line) + order[*own] + " must not use the later module " + order[*other]);
+  if (!own)
+    breaches.push_back(at(line) + "lies in no module of the list");
+  else if (!other)
+    breaches.push_back(at(line) + "includes " + included + ", which lies in no module of the list");
+  else if (*other > *own)
+    breaches.push_back(at(line) + order[*own] + " must not use the later module " + order[*other]);
 }
 
 void checkLayer(const SourceLine& line, const std::string& included, std::vector<std::string>& breaches) {
@@ -55,8 +64,7 @@ void checkLayer(const SourceLine& line, const std::string& included, std::vector
   const bool in_ui = startsWith(line.file, "ui/");
   if (in_core && startsWith(included, "core/")) return checkOrder(kCoreOrder, line, included, breaches);
   if (in_ui && startsWith(included, "ui/")) return checkOrder(kUiOrder, line, included, breaches);
-  if (in_core && !startsWith(included, "resources/"))
-    breaches.push_back(at(line) + "core must not use " + included);
+  if (in_core && !startsWith(included, "resources/")) breaches.push_back(at(line) + "core must not use " + included);
   if (in_ui && !startsWith(included, "core/") && !startsWith(included, "resources/"))
     breaches.push_back(at(line) + "ui must not use " + included);
 }
@@ -86,8 +94,10 @@ void checkCodeLine(const SourceLine& line, std::vector<std::string>& breaches) {
     const std::string included = match[2];
     const bool ours = startsWith(included, "core/") || startsWith(included, "ui/") || startsWith(included, "app/") ||
                       startsWith(included, "resources/") || startsWith(included, "tests/");
-    if (match[1] == "<") checkSystemInclude(line, included, breaches);
-    else if (ours) checkLayer(line, included, breaches);
+    if (match[1] == "<")
+      checkSystemInclude(line, included, breaches);
+    else if (ours)
+      checkLayer(line, included, breaches);
     else if (included.find(".moc") == std::string::npos)
       breaches.push_back(at(line) + "includes are written from the repository root (" + included + ")");
   }
@@ -105,8 +115,8 @@ void checkPlaces(const SourceLine& line, std::vector<std::string>& breaches) {
 }
 
 bool isText(const fs::path& path) {
-  static const std::set<std::string> kEndings = {".h",    ".cpp", ".txt", ".md",  ".sh",   ".json", ".csv",
-                                                 ".svg",  ".inc", ".in",  ".cmake", ".ebbline", ".qrc", ""};
+  static const std::set<std::string> kEndings = {".h",   ".cpp", ".txt", ".md",    ".sh",      ".json", ".csv",
+                                                 ".svg", ".inc", ".in",  ".cmake", ".ebbline", ".qrc",  ""};
   return kEndings.count(path.extension().string()) > 0;
 }
 
