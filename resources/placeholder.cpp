@@ -1,1 +1,0 @@
-// Replaced by generated sources.
