@@ -180,7 +180,8 @@ Or<double> Reader::mixed() {
 // all is in capitals, since milli and mega differ by a factor of 1e9.
 Or<Unit> Reader::unit(std::string_view name) const {
   std::vector<Unit> all = {table_.si, table_.ip, table_.file};
-  all.insert(all.end(), table_.others.begin(), table_.others.end());
+  for (const Unit& other : table_.others)
+    if (!other.name.empty()) all.push_back(other);
   for (const Unit& one : all)
     if (one.name == name) return one;
   bool capitals = true;

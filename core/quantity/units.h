@@ -1,8 +1,8 @@
 #pragma once
 // The table of units behind parsing and formatting; private to core/quantity.
 
+#include <array>
 #include <string_view>
-#include <vector>
 
 #include "core/quantity/quantity.h"
 
@@ -24,8 +24,8 @@ struct UnitTable {
   Unit ip;                   ///< and in inch-pound.
   int si_decimals = 2;
   int ip_decimals = 2;
-  bool feet_and_inches = false;  ///< 40'6" may be written.
-  std::vector<Unit> others;      ///< Further spellings and units that may be typed.
+  bool feet_and_inches = false;   ///< 40'6" may be written.
+  std::array<Unit, 16> others{};  ///< Further spellings and units that may be typed; the rest are empty.
 };
 
 const UnitTable& unitTable(Quantity quantity);
