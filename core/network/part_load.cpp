@@ -100,6 +100,17 @@ std::vector<Share> asPositions(const std::vector<Share>& shares, const Results& 
   return positions;
 }
 
+std::vector<Share> asLoads(const Network& network, const Results& results) {
+  std::vector<Share> loads;
+  loads.reserve(results.terminals.size());
+  for (std::size_t i = 0; i < results.terminals.size(); ++i) {
+    const double design = network.terminals[i].design_flow_m3s;
+    const double part = design > 0 ? results.terminals[i].delivered_m3s / design : 0;
+    loads.push_back({loop::DemandKind::kRequest, 100 * std::clamp(part, 0.0, 1.0)});
+  }
+  return loads;
+}
+
 PartLoadSolver::PartLoadSolver(std::shared_ptr<const Network> network)
     : network_(std::move(network)), solver_(*network_), tracer_(*network_) {}
 
@@ -108,6 +119,7 @@ PartLoadGround PartLoadSolver::ground(const SpeedRule& rule, std::stop_token sto
   const double density = network_->density_kg_m3;
   PartLoadGround ground;
   ground.rule = rule;
+  ground.density_kg_m3 = density;
   ground.design_flow_m3s = totalDesignFlow(*network_);
   ground.pump_family = pumpFamily(pump, density);
   ground.efficiency = efficiencyLines(pump, density);
@@ -150,6 +162,7 @@ PartLoadPicture PartLoadSolver::picture(const Request& request, const PartLoadGr
   }
   picture.results = resultsOf(*network_, request, warm_);
   tellTerminals(picture);
+  if (ground.design_flow_m3s > 0) picture.delivered_share = picture.delivered_m3s / ground.design_flow_m3s;
   const PumpResult& pump = picture.results.pumps.front();
   picture.operating = {pump.flow_m3s, pump.pressure_pa};
   picture.pump_now = pumpCurve(network_->pumps.front(), network_->density_kg_m3, pump.speed);
@@ -159,13 +172,13 @@ PartLoadPicture PartLoadSolver::picture(const Request& request, const PartLoadGr
   return picture;
 }
 
-SecondOpinion PartLoadSolver::check(const Request& request, std::stop_token stop) {
+SecondOpinion secondOpinion(const Network& network, const Request& request, std::stop_token stop) {
   SecondOpinion opinion;
   State first;
   State second;
-  Solver newton(*network_);
+  Solver newton(network);
   opinion.first = newton.solve(request, first, stop);
-  HardyCross cross(*network_);
+  HardyCross cross(network);
   opinion.second = cross.solve(request, second, stop);
   if (opinion.usable()) opinion.difference = largestDifference(first, second);
   return opinion;

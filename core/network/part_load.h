@@ -37,11 +37,15 @@ std::vector<Share> movedTo(const Network& network, const std::vector<Share>& bas
 /// Turns requests into the strokes at which the valves stand in `results`, so that nothing moves at the change.
 std::vector<Share> asPositions(const std::vector<Share>& shares, const Results& results);
 
+/// Turns what each terminal is given into what it asks for, at most its design flow.
+std::vector<Share> asLoads(const Network& network, const Results& results);
+
 /// What stays while terminals move: the ground of the head–flow plot under one speed rule.
 struct PartLoadGround {
   bool usable = false;
   std::string why;                          ///< Reason when not usable.
   SpeedRule rule;
+  double density_kg_m3 = 1000;
   double design_flow_m3s = 0;               ///< Sum of the terminals' design flows.
   HeadFlowPoint limits;                     ///< Of the plot's axes.
   std::vector<HeadFlowCurve> pump_family;
@@ -62,6 +66,7 @@ struct PartLoadPicture {
   HeadFlowCurve loop_now;      ///< Traced with the valves where they are; empty when there is no flow.
   HeadFlowPoint operating;
   double delivered_m3s = 0;    ///< Sum over terminals.
+  double delivered_share = 0;  ///< Of the design flow of all terminals.
   int under_supplied = 0;
   int first_under_supplied = -1;  ///< The one with the largest shortfall, index in terminals.
   double solve_ms = 0;         ///< Of the state alone, without the curves.
@@ -75,6 +80,9 @@ struct SecondOpinion {
   bool usable() const { return first.usable() && second.usable(); }
 };
 
+/// Both methods from their own cold starts.
+SecondOpinion secondOpinion(const Network& network, const Request& request, std::stop_token stop = {});
+
 /// Solves picture after picture of one network. Ordinary object, one thread at a time.
 class PartLoadSolver {
  public:
@@ -84,8 +92,6 @@ class PartLoadSolver {
   PartLoadGround ground(const SpeedRule& rule, std::stop_token stop = {});
   /// Warm from the picture before; from the cold start when that fails.
   PartLoadPicture picture(const Request& request, const PartLoadGround& ground, std::stop_token stop = {});
-  /// Both methods from their own cold starts.
-  SecondOpinion check(const Request& request, std::stop_token stop = {});
 
   const Network& network() const { return *network_; }
 

@@ -3,15 +3,14 @@
 #include <algorithm>
 #include <cmath>
 
+#include "core/quantity/quantity.h"
+
 namespace ebbline::network {
 
 namespace {
 
-/// Standard gravity [m/s²]. Published: 3rd CGPM (1901), exact by definition.
-constexpr double kGravity = 9.80665;
-
 double pressureAt(const PumpLaw& pump, double density_kg_m3, double flow_m3s, double speed) {
-  return pump.curve.head(flow_m3s, speed).value * density_kg_m3 * kGravity;
+  return pump.curve.head(flow_m3s, speed).value * density_kg_m3 * quantity::kGravity;
 }
 
 /// Flow at which the pump gives no head any more, or the last reading of its data if that comes first.
@@ -64,6 +63,10 @@ std::vector<double> traceSpeeds(double operating_speed, double operating_pa, dou
 }
 
 }  // namespace
+
+double headMetres(double pressure_pa, double density_kg_m3) {
+  return pressure_pa / (density_kg_m3 * quantity::kGravity);
+}
 
 HeadFlowCurve pumpCurve(const PumpLaw& pump, double density_kg_m3, double speed, int num_points) {
   HeadFlowCurve curve{speed, {}};

@@ -18,6 +18,9 @@ struct HeadFlowPoint {
   bool operator==(const HeadFlowPoint&) const = default;
 };
 
+/// Head of the fluid itself [m] that stands for a pressure.
+double headMetres(double pressure_pa, double density_kg_m3);
+
 /// A line of the head–flow plane, flows not falling. `speed` is relative to reference where one speed holds, else 0.
 struct HeadFlowCurve {
   double speed = 0;
