@@ -81,6 +81,7 @@ class Reader {
   }
   Or<std::string> withoutCommas(std::string_view digits) const;
   Or<double> decimal();
+  std::string_view exponentAt(std::size_t start) const;
   std::optional<std::pair<double, std::size_t>> fractionAt(std::size_t start) const;
   Or<double> mixed();
   Or<Unit> unit(std::string_view name) const;
@@ -123,25 +124,28 @@ Or<double> Reader::decimal() {
   std::size_t end = 0;
   while (end < rest_.size() && (isDigit(rest_[end]) || rest_[end] == '.' || rest_[end] == ',')) ++end;
   if (end == 0) return notANumber();
-  auto digits = withoutCommas(rest_.substr(0, end));
+  const auto digits = withoutCommas(rest_.substr(0, end));
   if (!digits) return tl::make_unexpected(digits.error());
-  if (end < rest_.size() && lower(rest_[end]) == 'e') {
-    std::size_t last = end + 1;
-    if (last < rest_.size() && (rest_[last] == '+' || rest_[last] == '-')) ++last;
-    const std::size_t first_digit = last;
-    while (last < rest_.size() && isDigit(rest_[last])) ++last;
-    if (last > first_digit) {
-      *digits += rest_.substr(end, last - end);
-      end = last;
-    }
-  }
+  const std::string_view exponent = exponentAt(end);
+  const std::string number = *digits + std::string(exponent);
   double value = 0;
-  const auto result = std::from_chars(digits->data(), digits->data() + digits->size(), value);
+  const char* const last = number.data() + number.size();
+  const auto result = std::from_chars(number.data(), last, value);
   if (result.ec == std::errc::result_out_of_range)
     return tl::make_unexpected(Remark{Code::kQuantityTooLarge, {}, {shownInMessage(typed_)}});
-  if (result.ec != std::errc() || result.ptr != digits->data() + digits->size()) return notANumber();
-  rest_.remove_prefix(end);
+  if (result.ec != std::errc() || result.ptr != last) return notANumber();
+  rest_.remove_prefix(end + exponent.size());
   return value;
+}
+
+// "e-3" at `start` of the rest; empty if there is none.
+std::string_view Reader::exponentAt(std::size_t start) const {
+  if (start >= rest_.size() || lower(rest_[start]) != 'e') return {};
+  std::size_t end = start + 1;
+  if (end < rest_.size() && (rest_[end] == '+' || rest_[end] == '-')) ++end;
+  const std::size_t first_digit = end;
+  while (end < rest_.size() && isDigit(rest_[end])) ++end;
+  return end > first_digit ? rest_.substr(start, end - start) : std::string_view{};
 }
 
 // "3/4" at `start` of the rest: its value and where it ends.
