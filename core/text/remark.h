@@ -17,9 +17,11 @@ enum class Severity {
 
 /// Every message by name. One line in codes/*.inc makes the enum value, its printed name, severity and words.
 enum class Code : std::uint16_t {
+#ifndef EBBLINE_SCAN_ONLY  // code scanners that read declarations only may not follow an include within an enum
 #define EBBLINE_MESSAGE(constant, name, severity, words, remedy) constant,
 #include "core/text/codes/all.inc"
 #undef EBBLINE_MESSAGE
+#endif
 };
 
 /// Where a remark points: into the file, at a thing of the loop, or both. Empty members mean "not known".
