@@ -20,8 +20,9 @@ struct PipeSize {
   double outside_m = 0;
   double wall_m = 0;
   double roughness_m = 0;  ///< Of the series' material, new.
-  std::string mark;        ///< published / from memory, for these numbers.
-  std::string source;      ///< Where the dimensions were read.
+  /// As in the table: "published", "memory" (recalled, to be verified), or which of the two for what.
+  std::string mark;
+  std::string source;  ///< Where the dimensions were read.
 };
 
 /// One pipe table, sizes rising.

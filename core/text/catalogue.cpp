@@ -15,7 +15,7 @@ struct Entry {
   const char* remedy;
 };
 
-constexpr auto kNote = Severity::kNote;
+[[maybe_unused]] constexpr auto kNote = Severity::kNote;
 constexpr auto kCaution = Severity::kCaution;
 constexpr auto kFault = Severity::kFault;
 

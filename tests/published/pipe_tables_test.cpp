@@ -68,7 +68,7 @@ TEST(PublishedFittings, TurbulentFactorOfTheRoughPipeLaw) {
   for (int row = 0; row < table.numRows(); ++row) {
     const double factor = catalogue::turbulentFactor(table.number(row, "ID_in") * 0.0254);
     EXPECT_NEAR(factor, table.number(row, "f_rough_computed"), 0.5e-5 * 1.001) << table.text(row, "NPS_in");
-    EXPECT_NEAR(factor / table.number(row, "fT"), 1, 0.10) << table.text(row, "NPS_in");
+    EXPECT_NEAR(factor / table.number(row, "fT"), 1, 0.05) << table.text(row, "NPS_in");
   }
 }
 
