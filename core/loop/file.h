@@ -4,7 +4,7 @@
 
 #include <cstddef>
 #include <filesystem>
-#include <map>
+#include <memory>
 #include <string>
 #include <string_view>
 #include <vector>
@@ -14,18 +14,34 @@
 
 namespace ebbline::loop {
 
+class JsonTree;
+
+/// Line of each JSON pointer of a file that was read. Cheap to copy.
+class Lines {
+ public:
+  Lines() = default;
+  explicit Lines(std::shared_ptr<const JsonTree> tree) : tree_(std::move(tree)) {}
+  /// Line (from 1) of the value at `pointer`, or of its nearest ancestor in the file; 0 if nothing was read.
+  int of(std::string_view pointer) const;
+
+ private:
+  std::shared_ptr<const JsonTree> tree_;
+};
+
 /// What reading gave. `loop` may be used only if usable(); all content faults are listed, not just the first.
 struct Reading {
   Loop loop;
   std::vector<text::Remark> remarks;
-  std::map<std::string, int> lines;  ///< Line (from 1) of each JSON pointer, so that later remarks can name it.
+  Lines lines;  ///< So that later remarks can name the line.
   bool usable() const { return !text::anyFault(remarks); }
 };
 
 /// Largest file read [bytes]; a larger one is refused before it is loaded.
-inline constexpr std::size_t kMostFileBytes = 64U * 1024U * 1024U;
+inline constexpr std::size_t kMostFileBytes = 128U * 1024U * 1024U;
 /// Deepest nesting read.
 inline constexpr int kMostDepth = 64;
+/// Most remarks listed about one file.
+inline constexpr std::size_t kMostRemarks = 2000;
 
 /// Reads the text of a file. Never throws, never crashes on any bytes; memory is bounded by a multiple of the size.
 Reading readLoop(std::string_view text);

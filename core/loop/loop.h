@@ -47,10 +47,10 @@ enum class FluidKind { kWater, kEthyleneGlycol, kPropyleneGlycol, kGiven };
 struct Fluid {
   FluidKind kind = FluidKind::kWater;
   double temperature_c = 10;
-  double glycol_mass_percent = 0;                 ///< Of glycol in the mixture, by mass.
-  std::optional<double> density_kg_m3;            ///< kGiven only.
-  std::optional<double> viscosity_mpa_s;          ///< kGiven only; dynamic.
-  std::optional<double> heat_capacity_kj_kgk;     ///< kGiven only.
+  double glycol_mass_percent = 0;              ///< Of glycol in the mixture, by mass.
+  std::optional<double> density_kg_m3;         ///< kGiven only.
+  std::optional<double> viscosity_mpa_s;       ///< kGiven only; dynamic.
+  std::optional<double> heat_capacity_kj_kgk;  ///< kGiven only.
   bool operator==(const Fluid&) const = default;
 };
 
@@ -77,8 +77,8 @@ struct Joint {
   std::string tag;
   bool paired = true;
   Point at;
-  Id level = 0;               ///< 0 = elevation counts from 0.
-  double above_level_m = 0;   ///< Elevation = level elevation + this.
+  Id level = 0;              ///< 0 = elevation counts from 0.
+  double above_level_m = 0;  ///< Elevation = level elevation + this.
   bool operator==(const Joint&) const = default;
 };
 
@@ -99,14 +99,14 @@ struct Fitting {
 /// What one pipe is made of.
 struct Pipe {
   double length_m = 0;
-  std::string series;                      ///< Pipe table in the catalogue, e.g. "steel-en10255-medium".
-  std::string size;                        ///< Size in that table, e.g. "DN 50".
-  std::optional<double> bore_mm;           ///< Typed inside diameter; wins over series and size.
-  std::optional<double> roughness_mm;      ///< Typed; wins over the table's.
+  std::string series;                  ///< Pipe table in the catalogue, e.g. "steel-en10255-medium".
+  std::string size;                    ///< Size in that table, e.g. "DN 50".
+  std::optional<double> bore_mm;       ///< Typed inside diameter; wins over series and size.
+  std::optional<double> roughness_mm;  ///< Typed; wins over the table's.
   std::vector<Fitting> fittings;
-  double fittings_allowance_percent = 0;   ///< Added to the length for fittings not counted.
-  double extra_k = 0;                      ///< Further loss coefficient on the bore's velocity.
-  std::optional<KnownLoss> known_loss;     ///< If present the pipe is this loss alone; length is for the drawing.
+  double fittings_allowance_percent = 0;  ///< Added to the length for fittings not counted.
+  double extra_k = 0;                     ///< Further loss coefficient on the bore's velocity.
+  std::optional<KnownLoss> known_loss;    ///< If present the pipe is this loss alone; length is for the drawing.
   bool operator==(const Pipe&) const = default;
 };
 
@@ -116,9 +116,9 @@ struct PairedRun {
   std::string tag;
   Id from = 0;
   Id to = 0;
-  Pipe pipe;                        ///< Both pipes, unless return_pipe says otherwise.
+  Pipe pipe;  ///< Both pipes, unless return_pipe says otherwise.
   std::optional<Pipe> return_pipe;
-  std::vector<Point> bends;         ///< Corners of the drawn line between its joints.
+  std::vector<Point> bends;  ///< Corners of the drawn line between its joints.
   Typed typed;
   bool operator==(const PairedRun&) const = default;
 };
@@ -148,8 +148,8 @@ struct ControlValve {
   double kvs_m3h = 0;
   Characteristic characteristic = Characteristic::kEqualPercentage;
   double rangeability = 50;
-  double leakage_percent = 0;               ///< Seat leakage, % of Kvs (IEC 60534-4 classes give ready values).
-  std::vector<CharacteristicPoint> table;   ///< kTable only.
+  double leakage_percent = 0;              ///< Seat leakage, % of Kvs (IEC 60534-4 classes give ready values).
+  std::vector<CharacteristicPoint> table;  ///< kTable only.
   bool operator==(const ControlValve&) const = default;
 };
 
@@ -211,8 +211,8 @@ struct Pump {
   End from;  ///< Suction.
   End to;    ///< Discharge.
   Point at;
-  std::vector<PumpPoint> curve;         ///< 2 points: H0 − aQ²; 3: a parabola; 4 or more: monotone cubic.
-  double minimum_speed_percent = 20;    ///< Of reference speed.
+  std::vector<PumpPoint> curve;       ///< 2 points: H0 − aQ²; 3: a parabola; 4 or more: monotone cubic.
+  double minimum_speed_percent = 20;  ///< Of reference speed.
   double maximum_speed_percent = 100;
   std::optional<double> run_out_flow_l_s;
   std::optional<double> minimum_flow_l_s;
@@ -306,11 +306,11 @@ enum class Strategy { kConstantSpeed, kDpPump, kDpHeaders, kFieldSensor };
 /// How the pump's speed is set.
 struct Control {
   Strategy strategy = Strategy::kConstantSpeed;
-  double speed_percent = 100;                 ///< kConstantSpeed.
-  std::optional<double> set_point_kpa;        ///< kDpPump and kDpHeaders; field sensors carry their own.
-  std::optional<End> header_supply;           ///< kDpHeaders.
+  double speed_percent = 100;           ///< kConstantSpeed.
+  std::optional<double> set_point_kpa;  ///< kDpPump and kDpHeaders; field sensors carry their own.
+  std::optional<End> header_supply;     ///< kDpHeaders.
   std::optional<End> header_return;
-  std::vector<Id> sensors;                    ///< kFieldSensor: every one at or above its set-point.
+  std::vector<Id> sensors;  ///< kFieldSensor: every one at or above its set-point.
   bool operator==(const Control&) const = default;
 };
 
