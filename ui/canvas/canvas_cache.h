@@ -1,0 +1,22 @@
+#pragma once
+// What LoopCanvas keeps between frames, rebuilt from the top down only as far as something changed.
+
+#include <memory>
+
+#include "ui/canvas/loop_canvas.h"
+#include "ui/canvas/painting.h"
+
+namespace ebbline::canvas {
+
+struct LoopCanvas::Cache {
+  std::unique_ptr<Topology> topology;  ///< Null: the loop changed.
+  Geometry geometry;
+  bool geometryValid = false;          ///< False: scale, theme or options changed.
+  Dresser dresser;
+  const Dressing* dressing = nullptr;  ///< Null: results, colours, selection changed.
+  std::vector<Label> labels;
+  bool labelsValid = false;
+  SymbolPixmaps pixmaps;
+};
+
+}  // namespace ebbline::canvas
