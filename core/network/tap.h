@@ -1,0 +1,40 @@
+#pragma once
+// What differential-pressure taps read: static pressure, so the velocity head at each tap is taken off.
+
+#include <vector>
+
+#include "core/network/edge_law.h"
+
+namespace ebbline::network {
+
+/// The tap pairs of one speed rule, looked up once. Newton, Hardy Cross and results read through it.
+class Taps {
+ public:
+  Taps(const Network& network, const std::vector<TapPair>& pairs);
+
+  int count() const { return static_cast<int>(pairs_.size()); }
+  const TapPair& pair(int index) const { return pairs_[index]; }
+  /// Static pressure at `high` minus static pressure at `low` [Pa]: total pressures less ρ v²/2 each. The flow at a
+  /// tap is the largest of the edges that meet there (the run it is mounted on, before or behind a branch).
+  double reading(int index, const EdgeLaws& laws, const std::vector<double>& node_pressure_pa,
+                 const std::vector<double>& edge_flow_m3s, double speed_squared) const;
+
+ private:
+  struct Point {
+    int node = -1;  // total pressure is that of this node …
+    int edge = -1;  // … less the losses of these elements of this edge
+    int last_element = -1;
+    double bore_m = 0;
+    std::vector<int> meeting;  // edges whose flow passes the tap
+  };
+  Point pointOf(int end, double bore_m) const;
+  double staticPressure(const Point& point, const EdgeLaws& laws, const std::vector<double>& node_pressure_pa,
+                        const std::vector<double>& edge_flow_m3s, double speed_squared) const;
+
+  const Network* network_;
+  std::vector<TapPair> pairs_;
+  std::vector<Point> high_;
+  std::vector<Point> low_;
+};
+
+}  // namespace ebbline::network
