@@ -24,12 +24,14 @@ struct Element {
   int first_power = 0;
   int num_powers = 0;
   double quadratic_pa_s2_m6 = 0;                ///< Sum of its fixed quadratic losses: Δp = r q|q|.
+  bool shut = false;                            ///< A shut valve: no flow either way, any pressure difference.
   int terminal = -1;                            ///< Index in terminals; -1 = none.
   int pump = -1;                                ///< Index in pumps; -1 = none.
   double bore_m = 0;                            ///< For velocity; 0 = none.
 };
 
-/// One edge: elements in series between two nodes, flow positive from → to.
+/// One edge: elements in series between two nodes, flow positive from → to. At most one element is a terminal, and it
+/// runs in the edge's direction. Both nodes may be the same (a loop without a branch).
 struct Edge {
   int from = 0;
   int to = 0;

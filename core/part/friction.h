@@ -1,0 +1,74 @@
+#pragma once
+// Darcy friction factor of a round pipe against Reynolds number and relative roughness ε/D.
+//
+//   Re ≤ 2000   f = 64/Re                                             [published: Hagen–Poiseuille]
+//   Re ≥ 4000   1/√f = −2 log10(ε/D/3.7 + 2.51/(Re √f))               [published: Colebrook, J. ICE 11, 1939]
+//   between     f Re² (which is proportional to the loss) is the cubic in Re that meets value and slope at both ends
+//
+// No correlation is authoritative between 2000 and 4000 (Moody 1944 leaves a critical zone; from memory). The blend
+// there is ours and has no physical authority: it is chosen only because the loss then rises strictly with flow and
+// loss and slope are continuous, which Newton's method needs.
+//
+// Colebrook is solved to machine precision. With x = 1/√f, a = ε/D/3.7, b = 2.51/Re the root of x + 2 log10(a + b x)
+// is found by Newton. The logarithm is taken from the one before by a short series while its argument changes by
+// less than 12 %, so that repeated evaluations near each other need no logarithm at all.
+
+#include <cmath>
+
+#include "core/part/value_slope.h"
+
+namespace ebbline::part {
+
+inline constexpr double kLaminarEnd = 2000;      ///< Reynolds number where 64/Re ends. [common practice]
+inline constexpr double kTurbulentBegin = 4000;  ///< Reynolds number where Colebrook begins. [common practice]
+inline constexpr double kRoughnessDivisor = 3.7; ///< [published: Colebrook 1939]
+inline constexpr double kSmoothConstant = 2.51;  ///< [published: Colebrook 1939]
+inline constexpr double kTwoOverLn10 = 0.86858896380650365530;  // 2/ln 10: 2 log10(y) = kTwoOverLn10 · ln y
+
+/// What one pipe remembers between evaluations. Only speed depends on it, not the answer (beyond 1e-12 relative).
+struct FrictionMemory {
+  double root = 0;     ///< Last 1/√f; 0 = nothing remembered.
+  double at = 0;       ///< Argument of the last logarithm taken …
+  double log_at = 0;   ///< … and its natural logarithm.
+};
+
+/// Natural logarithm of y > 0, from the remembered one by ln(y/y0) = 2 artanh((y − y0)/(y + y0)) when near.
+inline double logNear(double y, FrictionMemory& memory) {
+  const double s = (y - memory.at) / (y + memory.at);
+  const double s2 = s * s;
+  if (s2 < 0.0036)  // next term 2 s^11/11 < 7e-15
+    return memory.log_at + 2 * s * (1 + s2 * (1.0 / 3 + s2 * (1.0 / 5 + s2 * (1.0 / 7 + s2 * (1.0 / 9)))));
+  memory.at = y;
+  memory.log_at = std::log(y);
+  return memory.log_at;
+}
+
+/// 1/√f of Colebrook, and m = −d ln(1/√f)… as needed for slopes: `steepness` = 1/(1 + (2/ln 10) b/(a + b x)), which
+/// makes d(f q²)/dq = 2 f q · steepness.
+struct ColebrookRoot {
+  double root = 0;
+  double steepness = 1;
+};
+
+/// `a` = ε/D/3.7 ≥ 0, `b` = 2.51/Re > 0.
+inline ColebrookRoot colebrookRoot(double a, double b, FrictionMemory& memory) {
+  // First guess: the root with x = 8 put into the logarithm; any guess in reach converges, the function is concave.
+  double x = memory.root > 0 ? memory.root : -kTwoOverLn10 * std::log(a + 8 * b);
+  if (!(x > 0.5)) x = 0.5;
+  double share = 0;
+  for (int i = 0; i < 40; ++i) {
+    const double y = a + b * x;
+    share = kTwoOverLn10 * b / y;
+    const double change = -(x + kTwoOverLn10 * logNear(y, memory)) / (1 + share);
+    x = x + change > 0 ? x + change : 0.5 * x;
+    // Newton's error is at most share/(2 x) of the square of the change: below 1e-13 once the change is this small.
+    if (std::abs(change) < 2e-6 * x) break;
+  }
+  memory.root = x;
+  return {x, 1 / (1 + share)};
+}
+
+/// Friction factor and its derivative to Re. REQUIRES: reynolds > 0, relative_roughness ≥ 0.
+ValueSlope frictionFactor(double reynolds, double relative_roughness);
+
+}  // namespace ebbline::part
