@@ -1,0 +1,110 @@
+#include "core/loop/campus.h"
+
+#include <algorithm>
+#include <chrono>
+#include <map>
+#include <set>
+
+#include <gtest/gtest.h>
+
+#include "core/catalogue/pipe.h"
+#include "core/loop/check.h"
+#include "core/loop/file.h"
+
+namespace ebbline::loop {
+namespace {
+
+const int kSizes[] = {1, 2, 6, 7, 24, 59, 60, 61, 250, 1000, 1001, 3333};
+
+TEST(Campus, HasTheTerminalsAskedForAndNothingToRemark) {
+  for (const int terminals : kSizes) {
+    const Loop loop = campus(terminals);
+    EXPECT_EQ(loop.terminals.size(), static_cast<std::size_t>(terminals));
+    for (const text::Remark& remark : checkContent(loop)) ADD_FAILURE() << terminals << ": " << text::oneLine(remark);
+  }
+  EXPECT_EQ(campus(-5).terminals.size(), 1U);
+}
+
+TEST(Campus, IsTheSameEveryTimeAndSurvivesTheFile) {
+  for (const int terminals : kSizes) {
+    const Loop loop = campus(terminals);
+    EXPECT_TRUE(campus(terminals) == loop);
+    const std::string text = writeLoop(loop);
+    const Reading reading = readLoop(text);
+    EXPECT_TRUE(reading.remarks.empty());
+    EXPECT_TRUE(reading.loop == loop);
+    EXPECT_EQ(writeLoop(reading.loop), text);
+  }
+}
+
+TEST(Campus, PairedRunsFormATreeFromTheFoot) {
+  const Loop loop = campus(777);
+  std::map<Id, Id> parent;
+  for (const PairedRun& run : loop.paired_runs) EXPECT_TRUE(parent.emplace(run.to, run.from).second);
+  const Id foot = loop.pipe_runs.front().to.joint;
+  for (const Terminal& terminal : loop.terminals) {
+    EXPECT_EQ(terminal.from.joint, terminal.to.joint);
+    Id at = terminal.from.joint;
+    int steps = 0;
+    while (at != foot && steps++ < 1000) at = parent.at(at);
+    EXPECT_EQ(at, foot);
+  }
+}
+
+TEST(Campus, NothingIsDrawnUponAnotherThing) {
+  for (const int terminals : {7, 250, 1001}) {
+    const Loop loop = campus(terminals);
+    std::set<std::pair<double, double>> places;
+    for (const Joint& joint : loop.joints) EXPECT_TRUE(places.insert({joint.at.x_m, joint.at.y_m}).second);
+    for (const Terminal& terminal : loop.terminals)
+      EXPECT_TRUE(places.insert({terminal.at.x_m, terminal.at.y_m}).second);
+    for (const Plant& plant : loop.plants) EXPECT_TRUE(places.insert({plant.at.x_m, plant.at.y_m}).second);
+  }
+}
+
+TEST(Campus, EverySizeStandsInTheCatalogueOrIsTyped) {
+  const Loop loop = campus(20000);
+  bool beyond_tables = false;
+  for (const PairedRun& run : loop.paired_runs) {
+    beyond_tables |= run.pipe.bore_mm.has_value();
+    if (!run.pipe.bore_mm) {
+      EXPECT_TRUE(catalogue::pipeSize(run.pipe.series, run.pipe.size).has_value());
+    }
+  }
+  EXPECT_TRUE(beyond_tables);
+}
+
+TEST(Campus, PumpHasTheFlowOfAllTerminals) {
+  const Loop loop = campus(250);
+  double sum = 0;
+  for (const Terminal& terminal : loop.terminals) sum += terminal.design_flow_l_s;
+  EXPECT_NEAR(loop.pumps[0].curve[3].flow_l_s, sum, 0.006);
+  EXPECT_EQ(loop.control.sensors, std::vector<Id>{loop.sensors[0].id});
+}
+
+TEST(Campus, TenThousandTerminalsOpenAndSaveInASecond) {
+  const Loop loop = campus(10000);
+  const auto start = std::chrono::steady_clock::now();
+  const std::string text = writeLoop(loop);
+  const auto written = std::chrono::steady_clock::now();
+  const Reading reading = readLoop(text);
+  const auto read = std::chrono::steady_clock::now();
+  const auto seconds = [](auto from, auto to) { return std::chrono::duration<double>(to - from).count(); };
+  std::printf("10,000 terminals, %.1f MB: save %.3f s, open %.3f s\n", static_cast<double>(text.size()) / 1e6,
+              seconds(start, written), seconds(written, read));
+  EXPECT_TRUE(reading.loop == loop);
+#ifndef __SANITIZE_ADDRESS__
+  EXPECT_LT(seconds(start, written), 1.0);
+  EXPECT_LT(seconds(written, read), 1.0);
+#endif
+}
+
+TEST(Campus, LargestIsWithinTheSizeThatIsRead) {
+  const Loop loop = campus(kMostCampusTerminals);
+  const std::string text = writeLoop(loop);
+  EXPECT_LT(text.size(), kMostFileBytes);
+  EXPECT_TRUE(readLoop(text).loop == loop);
+}
+
+}  // namespace
+}  // namespace ebbline::loop
