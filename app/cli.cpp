@@ -5,6 +5,7 @@
 #include <exception>
 #include <filesystem>
 #include <fstream>
+#include <optional>
 #include <ostream>
 #include <system_error>
 
@@ -38,6 +39,23 @@ Exit codes
 Results are steady-state estimates for engineering judgement. Check against local codes and the makers' data; have a
 licensed engineer sign what is built.)";
 
+std::vector<std::string> verbsOf(const CLI::App& app) {
+  std::vector<std::string> names;
+  for (const CLI::App* verb : app.get_subcommands([](const CLI::App*) { return true; }))
+    names.push_back(verb->get_name());
+  return names;
+}
+
+// Why there is no verb to run, if that is the fault of the command.
+std::optional<text::Remark> wrongVerb(const CLI::App& app, const std::vector<std::string>& arguments) {
+  const std::vector<std::string> names = verbsOf(app);
+  if (arguments.empty()) return remark(text::Code::kCommandNoVerb, {listed(names)});
+  const std::string& first = arguments.front();
+  const bool known = std::find(names.begin(), names.end(), first) != names.end();
+  if (known || (!first.empty() && first.front() == '-')) return std::nullopt;
+  return remark(text::Code::kCommandUnknownVerb, {first, listed(names)});
+}
+
 int wrongUsage(const CLI::ParseError& error, Streams streams) {
   std::string sentence = error.what();
   if (sentence.empty()) sentence = "the command was not understood";
@@ -60,6 +78,7 @@ int parseAndRun(std::vector<std::string> arguments, Streams streams) {
   addReport(app, context);
   addConvert(app, context);
   addSample(app, context);
+  if (const auto reason = wrongVerb(app, arguments)) return refuse(*reason, kUsage, streams);
   std::reverse(arguments.begin(), arguments.end());  // as CLI11 takes them
   try {
     app.parse(std::move(arguments));

@@ -13,8 +13,6 @@
 namespace ebbline::app {
 namespace {
 
-constexpr int kMostTerminals = 200000;
-
 struct Options {
   std::string name;
   std::string output;
@@ -40,9 +38,9 @@ int sample(const Options& options, Streams streams) {
   }
   std::string text;
   if (options.name == "campus") {
-    if (options.terminals < 1 || options.terminals > kMostTerminals)
+    if (options.terminals < 1 || options.terminals > loop::kMostCampusTerminals)
       return refuse(remark(text::Code::kCommandBadCount,
-                           {std::to_string(options.terminals), "1", std::to_string(kMostTerminals)}),
+                           {std::to_string(options.terminals), "1", std::to_string(loop::kMostCampusTerminals)}),
                     kUsage, streams);
     text = loop::writeLoop(loop::campus(options.terminals));
   } else {

@@ -1,5 +1,6 @@
 #pragma once
-// The client report: question, number, picture, caution on paper. Everything is handed in solved; here it is only drawn.
+// The client report: question, number, picture, caution on paper. Everything is handed in solved; here it is only
+// drawn.
 
 #include <optional>
 #include <string>
@@ -19,15 +20,15 @@ namespace ebbline::report {
 /// What a report tells. Borrowed pointers must outlive the call.
 struct ReportContent {
   const loop::Loop* loop = nullptr;
-  std::string file_name;                           ///< As printed in the footer.
-  std::string question;                            ///< Headline; empty = the usual question.
-  std::string state_name;                          ///< Of the state drawn.
-  std::string strategy;                            ///< In words: "field sensor S1, 62 kPa".
-  std::string series_key;                          ///< Of the strategy's colour in the tokens, e.g. "field_sensor".
+  std::string file_name;   ///< As printed in the footer.
+  std::string question;    ///< Headline; empty = the usual question.
+  std::string state_name;  ///< Of the state drawn.
+  std::string strategy;    ///< In words: "field sensor S1, 62 kPa".
+  std::string series_key;  ///< Of the strategy's colour in the tokens, e.g. "field_sensor".
   const network::PartLoadGround* ground = nullptr;
   const network::PartLoadPicture* picture = nullptr;  ///< The state drawn; summary.usable().
-  std::vector<study::SweepRow> rows;               ///< The table, full load first.
-  std::optional<double> method_difference;         ///< Of the state drawn; absent = second method not available.
+  std::vector<study::SweepRow> rows;                  ///< The table, full load first.
+  std::optional<double> method_difference;            ///< Of the state drawn; absent = second method not available.
   quantity::UnitSystem units = quantity::UnitSystem::kSi;
 };
 
