@@ -118,12 +118,13 @@ class TreeBuilder {
     std::uint32_t last = JsonTree::kNone;
   };
 
-  // Complaints about a whole token point at its start, those about a byte at that byte.
+  // Complaints about a whole token point at its start, those about a byte at that byte. For brackets, commas and
+  // colons the library's token text holds what stands before them as well, but they are one byte long.
   std::size_t offsetOf(std::size_t position, const std::string& token, std::string_view complaint) const {
-    const bool whole_token = complaint.find("unexpected ") != std::string_view::npos;
-    const bool at_end = complaint.find("unexpected end of input") != std::string_view::npos;
-    const std::size_t back = whole_token ? std::max<std::size_t>(token.size(), 1) : 1;
-    if (at_end) return text_.size();
+    const auto says = [complaint](const char* words) { return complaint.find(words) != std::string_view::npos; };
+    if (says("unexpected end of input")) return text_.size();
+    const bool long_token = says("unexpected ") && !says("unexpected '");
+    const std::size_t back = long_token ? std::max<std::size_t>(token.size(), 1) : 1;
     return position > back ? position - back : 0;
   }
 

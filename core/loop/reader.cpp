@@ -305,9 +305,48 @@ bool settleEncoding(std::string_view& text, std::vector<text::Remark>& remarks) 
   return true;
 }
 
+bool liesIn(std::string_view pointer, std::string_view outer) {
+  return pointer.starts_with(outer) && (pointer.size() == outer.size() || pointer[outer.size()] == '/');
+}
+
+// The lists whose things a remark about a reference looks into.
+std::vector<std::string_view> listsBehind(Code code) {
+  switch (code) {
+    case Code::kLoopNoSuchJoint:
+    case Code::kLoopSideMissing:
+    case Code::kLoopSideNotNamed:
+    case Code::kLoopRunNeedsPair:
+      return {"/joints"};
+    case Code::kLoopNoSuchLevel:
+      return {"/levels"};
+    case Code::kLoopNoSuchZone:
+      return {"/zones"};
+    case Code::kLoopNoSuchSensor:
+      return {"/sensors"};
+    case Code::kLoopNoSuchTarget:
+      return {"/terminals", "/zones"};
+    default:
+      return {};
+  }
+}
+
+// True if the content remark may only follow from a value that could not be read: one fault shall not draw many.
+bool followsFrom(const text::Remark& remark, const text::Remark& unread) {
+  if (liesIn(remark.place.pointer, unread.place.pointer) || liesIn(unread.place.pointer, remark.place.pointer))
+    return true;
+  for (const std::string_view list : listsBehind(remark.code))
+    if (liesIn(unread.place.pointer, list)) return true;
+  return false;
+}
+
 void addContentRemarks(const Loop& loop, const JsonTree& tree, std::vector<text::Remark>& remarks) {
+  std::vector<text::Remark> unread;
+  for (const text::Remark& remark : remarks)
+    if (text::severityOf(remark.code) == text::Severity::kFault) unread.push_back(remark);
   for (text::Remark& remark : checkContent(loop)) {
     if (remarks.size() >= kMostRemarks) return;
+    const auto cause = [&remark](const text::Remark& fault) { return followsFrom(remark, fault); };
+    if (std::any_of(unread.begin(), unread.end(), cause)) continue;
     remark.place.line = static_cast<int>(tree.node(tree.nearest(remark.place.pointer)).line);
     remarks.push_back(std::move(remark));
   }
