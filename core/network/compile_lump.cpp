@@ -120,6 +120,7 @@ void Lumper::addEdge(std::vector<ChainStep> chain) {
     new_index_[drafted] = static_cast<int>(elements_.size());
     elements_.push_back(network_.elements[drafted]);
     elements_.back().reversed = step.reversed;
+    elements_.back().tag = draft_.links[step.link].tag;
     const int point = end(step);
     if (node_[point] >= 0) continue;
     place_[point].edge = static_cast<int>(network_.edges.size());

@@ -17,6 +17,7 @@ struct Element {
   enum class Kind : std::uint8_t { kPipe, kTerminal, kPlant, kPump, kValve };
   Kind kind = Kind::kPipe;
   loop::Id id = 0;                              ///< The thing drawn.
+  std::string tag;                              ///< Its tag as the user knows it.
   loop::Side side = loop::Side::kSingle;        ///< Paired runs: which of its two pipes.
   bool reversed = false;                        ///< Drawn against the edge's direction.
   int first_pipe = 0;                           ///< Slices of the law arrays below.

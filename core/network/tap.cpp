@@ -30,6 +30,14 @@ Taps::Point Taps::pointOf(int end, double bore_m) const {
   return point;
 }
 
+/// The edge with the largest flow of those that meet at a tap.
+int Taps::runOf(const Point& point, const std::vector<double>& edge_flow_m3s) const {
+  int run = -1;
+  for (int e : point.meeting)
+    if (run < 0 || std::abs(edge_flow_m3s[e]) > std::abs(edge_flow_m3s[run])) run = e;
+  return run;
+}
+
 double Taps::staticPressure(const Point& point, const EdgeLaws& laws, const std::vector<double>& node_pressure_pa,
                             const std::vector<double>& edge_flow_m3s, double speed_squared) const {
   double pressure = node_pressure_pa[point.node];
@@ -37,9 +45,8 @@ double Taps::staticPressure(const Point& point, const EdgeLaws& laws, const std:
     for (int i = network_->edges[point.edge].first_element; i <= point.last_element; ++i)
       pressure -= laws.evaluateElement(i, edge_flow_m3s[point.edge], speed_squared).loss_pa;
   if (point.bore_m <= 0) return pressure;
-  double flow = 0;
-  for (int e : point.meeting) flow = std::max(flow, std::abs(edge_flow_m3s[e]));
-  const double velocity = flow / (std::numbers::pi / 4 * point.bore_m * point.bore_m);
+  const int run = runOf(point, edge_flow_m3s);
+  const double velocity = run < 0 ? 0 : edge_flow_m3s[run] / (std::numbers::pi / 4 * point.bore_m * point.bore_m);
   return pressure - network_->density_kg_m3 * velocity * velocity / 2;
 }
 
@@ -47,6 +54,27 @@ double Taps::reading(int index, const EdgeLaws& laws, const std::vector<double>&
                      const std::vector<double>& edge_flow_m3s, double speed_squared) const {
   return staticPressure(high_[index], laws, node_pressure_pa, edge_flow_m3s, speed_squared) -
          staticPressure(low_[index], laws, node_pressure_pa, edge_flow_m3s, speed_squared);
+}
+
+void Taps::derivatives(const Point& point, double sign, const EdgeLaws& laws, const std::vector<double>& edge_flow_m3s,
+                       double speed_squared, std::vector<TapTerm>& terms) const {
+  terms.push_back({point.node, -1, sign});
+  if (point.edge >= 0) {
+    double slope = 0;
+    for (int i = network_->edges[point.edge].first_element; i <= point.last_element; ++i)
+      slope += laws.evaluateElement(i, edge_flow_m3s[point.edge], speed_squared).slope_pa_s_m3;
+    terms.push_back({-1, point.edge, -sign * slope});
+  }
+  const int run = point.bore_m > 0 ? runOf(point, edge_flow_m3s) : -1;
+  if (run < 0) return;
+  const double area = std::numbers::pi / 4 * point.bore_m * point.bore_m;
+  terms.push_back({-1, run, -sign * network_->density_kg_m3 * edge_flow_m3s[run] / (area * area)});
+}
+
+void Taps::derivatives(int index, const EdgeLaws& laws, const std::vector<double>& edge_flow_m3s, double speed_squared,
+                       std::vector<TapTerm>& terms) const {
+  derivatives(high_[index], 1, laws, edge_flow_m3s, speed_squared, terms);
+  derivatives(low_[index], -1, laws, edge_flow_m3s, speed_squared, terms);
 }
 
 }  // namespace ebbline::network

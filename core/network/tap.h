@@ -7,6 +7,13 @@
 
 namespace ebbline::network {
 
+/// One way in which a reading changes: by the pressure of a node, or by the flow of an edge.
+struct TapTerm {
+  int node = -1;
+  int edge = -1;
+  double factor = 0;  ///< ±1 for a node, [Pa/(m³/s)] for an edge.
+};
+
 /// The tap pairs of one speed rule, looked up once. Newton, Hardy Cross and results read through it.
 class Taps {
  public:
@@ -18,6 +25,9 @@ class Taps {
   /// tap is the largest of the edges that meet there (the run it is mounted on, before or behind a branch).
   double reading(int index, const EdgeLaws& laws, const std::vector<double>& node_pressure_pa,
                  const std::vector<double>& edge_flow_m3s, double speed_squared) const;
+  /// Derivatives of that reading to node pressures and edge flows, added to `terms`.
+  void derivatives(int index, const EdgeLaws& laws, const std::vector<double>& edge_flow_m3s, double speed_squared,
+                   std::vector<TapTerm>& terms) const;
 
  private:
   struct Point {
@@ -30,6 +40,9 @@ class Taps {
   Point pointOf(int end, double bore_m) const;
   double staticPressure(const Point& point, const EdgeLaws& laws, const std::vector<double>& node_pressure_pa,
                         const std::vector<double>& edge_flow_m3s, double speed_squared) const;
+  int runOf(const Point& point, const std::vector<double>& edge_flow_m3s) const;
+  void derivatives(const Point& point, double sign, const EdgeLaws& laws, const std::vector<double>& edge_flow_m3s,
+                   double speed_squared, std::vector<TapTerm>& terms) const;
 
   const Network* network_;
   std::vector<TapPair> pairs_;
