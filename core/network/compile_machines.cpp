@@ -171,8 +171,8 @@ void addPump(Draft& draft, const loop::Pump& pump) {
   law.tag = pump.tag;
   law.element = static_cast<int>(draft.network.elements.size());
   law.curve = curveOf(draft, pump);
-  law.minimum_speed = pump.minimum_speed_percent * kPercent;
-  law.maximum_speed = pump.maximum_speed_percent * kPercent;
+  law.minimum_speed = pump.minimum_speed_percent / 100;
+  law.maximum_speed = pump.maximum_speed_percent / 100;
   if (needPositive(draft, pump.minimum_speed_percent, "the minimum speed", pump.id, pump.tag) &&
       needPositive(draft, pump.maximum_speed_percent, "the maximum speed", pump.id, pump.tag) &&
       pump.minimum_speed_percent > pump.maximum_speed_percent)

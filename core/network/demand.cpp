@@ -7,7 +7,6 @@ namespace ebbline::network {
 
 namespace {
 
-constexpr double kPercent = 0.01;
 constexpr double kPaPerKpa = 1000;
 constexpr double kMetresPerMillimetre = 1e-3;
 
@@ -17,8 +16,8 @@ struct Share {
 };
 
 TerminalDemand demandOf(const Share& share, double design_flow_m3s) {
-  if (share.kind == loop::DemandKind::kPosition) return {share.kind, 0, share.percent * kPercent};
-  return {share.kind, share.percent * kPercent * design_flow_m3s, 1};
+  if (share.kind == loop::DemandKind::kPosition) return {share.kind, 0, share.percent / 100};
+  return {share.kind, share.percent / 100 * design_flow_m3s, 1};
 }
 
 /// Index in Network::ends; −1 when the end is not connected.
@@ -78,7 +77,7 @@ void addSensors(const loop::Loop& loop, const Network& network, SpeedRule& rule)
 SpeedRule speedRuleOf(const loop::Loop& loop, const Network& network) {
   const loop::Control& control = loop.control;
   SpeedRule rule;
-  rule.speed = control.speed_percent * kPercent;
+  rule.speed = control.speed_percent / 100;
   if (!network.pumps.empty()) {  // all pumps run at one speed: within the bounds of each
     rule.minimum_speed = 0;
     rule.maximum_speed = network.pumps.front().maximum_speed;

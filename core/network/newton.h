@@ -59,7 +59,7 @@ class Newton {
   void warmStart(const State& state);
   double freeFlow(int edge, double pressure_pa);
   void setFlow(int edge, double flow, bool held);
-  void leave(State& state);
+  void leave(const Request& request, State& state);
 
   // newton_parts.cpp: parts of the network that nothing connects with the datum
   bool alwaysConnected() const;

@@ -162,11 +162,14 @@ void Newton::start(const Request& request, const State& state) {
   warm ? warmStart(state) : coldStart();
 }
 
-void Newton::leave(State& state) {
+void Newton::leave(const Request& request, State& state) {
   gather();
   state.node_pressure_pa = node_pressure_;
   state.edge_flow_m3s = edge_flow_;
   state.speed = std::sqrt(speed_squared_);
+  if (summary_.bound == SpeedBound::kAtMinimum) state.speed = request.speed.minimum_speed;  // to the last bit
+  if (summary_.bound == SpeedBound::kAtMaximum) state.speed = request.speed.maximum_speed;
+  if (!border_.active()) state.speed = request.speed.speed;
   state.throttled.assign(network_.terminals.size(), 0);
   for (std::size_t t = 0; t < network_.terminals.size(); ++t) {
     const int e = laws_.edgeOfTerminal(static_cast<int>(t));
@@ -183,7 +186,7 @@ Summary Newton::solve(const Request& request, State& state, const std::stop_toke
   }
   start(request, state);
   rounds(stop);
-  if (summary_.ended != Ended::kRefused) leave(state);
+  if (summary_.ended != Ended::kRefused) leave(request, state);
   return summary_;
 }
 
