@@ -43,6 +43,14 @@ std::vector<Stretch> stretchesOf(const std::vector<Line>& lines) {
   return out;
 }
 
+/// Whether the boxes of two stretches touch: almost all pairs of a cell do not.
+bool near(const Stretch& p, const Stretch& q) {
+  const auto apart = [](double a, double b, double c, double d) {
+    return std::max(a, b) < std::min(c, d) || std::max(c, d) < std::min(a, b);
+  };
+  return !apart(p.a.x(), p.b.x(), q.a.x(), q.b.x()) && !apart(p.a.y(), p.b.y(), q.a.y(), q.b.y());
+}
+
 /// Distance along `under` at which `over` crosses it, if both go on beyond the place.
 std::optional<double> crossing(const Stretch& under, const Stretch& over) {
   const QPointF u = under.b - under.a, v = over.b - over.a, w = over.a - under.a;
@@ -94,6 +102,7 @@ class Crossings {
 
  private:
   void pair(int i, int k) {
+    if (!near(stretches_[static_cast<size_t>(i)], stretches_[static_cast<size_t>(k)])) return;
     const Line &a = lines_[static_cast<size_t>(stretches_[static_cast<size_t>(i)].line)],
                &b = lines_[static_cast<size_t>(stretches_[static_cast<size_t>(k)].line)];
     const bool firstOver = a.over != b.over ? a.over : i > k;

@@ -70,6 +70,7 @@ struct GeometryOptions {
   double pairGap = 9;          ///< px between the centres of a pair.
   double largestSymbol = 1;
   bool snap = true;            ///< Put lines on half pixels, for the screen.
+  bool cut = true;             ///< Draw crossings as overpasses; not needed where only the size is asked for.
 };
 
 Geometry makeGeometry(const loop::Loop& loop, const Topology& topology, double scale, const GeometryOptions& options);

@@ -26,6 +26,7 @@ class GeometryBuilder {
   JointPoints placeJoint(const loop::Joint& joint) const;
   void setApart(const loop::Joint& joint, JointPoints& points) const;
   std::vector<QPointF> directionsAt(loop::Id joint) const;
+  std::vector<QPointF> waysTakenAt(const loop::End& end) const;
   QPointF pairShift(const std::vector<QPointF>& directions) const;
   QPointF px(loop::Point at) const;
   QPointF pointOf(const loop::End& end) const;
@@ -44,9 +45,10 @@ class GeometryBuilder {
   void layTaps();
   void terminalLeg(const loop::Terminal& terminal, const Mark& mark, const loop::End& end, double offset);
   void plantLeg(const loop::Plant& plant, const loop::End& end, QPointF port, double outward);
-  bool mainPasses(loop::Id joint, double toRight) const;
+  bool mainPasses(const loop::End& end, double toRight) const;
   void markJoints();
-  QPointF tapPoint(const loop::End& end) const { return pointOf(end); }
+  QPointF tapCorner(const loop::End& end, QPointF to) const;
+  bool crossesTerminal(QPointF a, QPointF b) const;
   void measure();
 
   const loop::Loop& loop_;

@@ -39,11 +39,9 @@ Symbol symbolOf(loop::PlantKind kind) {
 }  // namespace
 
 // True if a level main goes on from the joint to the right (or left), so that a leg set down there meets it.
-bool GeometryBuilder::mainPasses(loop::Id joint, double toRight) const {
-  const loop::Joint* here = topology_.joint(joint);
-  if (!here || !here->paired) return false;
-  const std::vector<QPointF> directions = directionsAt(joint);
-  return std::any_of(directions.begin(), directions.end(), [&](QPointF d) { return d.x() * toRight > 0.99; });
+bool GeometryBuilder::mainPasses(const End& end, double toRight) const {
+  const std::vector<QPointF> ways = waysTakenAt(end);
+  return std::any_of(ways.begin(), ways.end(), [&](QPointF way) { return way.x() * toRight > 0.99; });
 }
 
 void GeometryBuilder::terminalLeg(const loop::Terminal& terminal, const Mark& mark, const End& end, double offset) {
@@ -61,7 +59,7 @@ void GeometryBuilder::terminalLeg(const loop::Terminal& terminal, const Mark& ma
   const QPointF top(x, start.y());
   std::vector<QPointF> line{top, {x, edge}};
   const double away = x - start.x();
-  const bool onMain = std::abs(away) < 3 * options_.pairGap + 1 && mainPasses(end.joint, away > 0 ? 1 : -1);
+  const bool onMain = std::abs(away) < 3 * options_.pairGap + 1 && mainPasses(end, away > 0 ? 1 : -1);
   if (std::abs(away) > kNear && !onMain) line.insert(line.begin(), start);
   if (!onMain && topology_.connections(end) >= 3) out_.dots.push_back({start, 2.1 * std::min(1.0, mark.scale + 0.15), strand});
   if (onMain && std::abs(away) > kNear) out_.dots.push_back({top, 2.1 * std::min(1.0, mark.scale + 0.15), strand});
@@ -157,10 +155,33 @@ void GeometryBuilder::layPumpsAndValves() {
   }
 }
 
+bool GeometryBuilder::crossesTerminal(QPointF a, QPointF b) const {
+  const QRectF path = QRectF(a, b).normalized().adjusted(-0.5, -0.5, 0.5, 0.5);
+  return std::any_of(out_.marks.begin(), out_.marks.end(), [&](const Mark& mark) {
+    const double half = 11 * mark.scale;
+    return mark.part.kind == PartKind::kTerminal &&
+           path.intersects(QRectF(mark.centre - QPointF(half, half), QSizeF(2 * half, 2 * half)));
+  });
+}
+
+// Square where no run already goes that way and no terminal stands in it, else straight across.
+QPointF GeometryBuilder::tapCorner(const End& end, QPointF to) const {
+  const QPointF from = pointOf(end), step = to - from;
+  const std::vector<QPointF> taken = waysTakenAt(end);
+  const auto free = [&](QPointF way, QPointF corner) {
+    const bool open = std::none_of(taken.begin(), taken.end(), [&](QPointF d) { return d.x() * way.x() + d.y() * way.y() > 0.99; });
+    return open && !crossesTerminal(from, corner) && !crossesTerminal(corner, to);
+  };
+  const QPointF upright(from.x(), to.y()), level(to.x(), from.y());
+  if (free({0, step.y() < 0 ? -1.0 : 1.0}, upright)) return upright;
+  if (free({step.x() < 0 ? -1.0 : 1.0, 0}, level)) return level;
+  return to;
+}
+
 void GeometryBuilder::layTaps() {
   const double s = out_.symbolScale;
-  const auto square = [this](QPointF from, QPointF to, loop::Id id) {
-    const QPointF corner(from.x(), to.y());
+  const auto tap = [this](const End& end, QPointF to, loop::Id id) {
+    const QPointF from = pointOf(end), corner = tapCorner(end, to);
     if (from != corner) out_.taps.push_back({from, corner, id});
     if (corner != to) out_.taps.push_back({corner, to, id});
   };
@@ -170,7 +191,7 @@ void GeometryBuilder::layTaps() {
     for (const End& end : {sensor.high, sensor.low}) {
       if (!topology_.joint(end.joint)) continue;
       out_.dots.push_back({pointOf(end), 2.5 * std::min(1.0, s + 0.2), -1});
-      square(pointOf(end), centre, sensor.id);
+      tap(end, centre, sensor.id);
     }
     out_.marks.push_back({{PartKind::kSensor, static_cast<int>(i)}, sensor.id, Symbol::kSensor, centre, s, 0, 26, false,
                           around(centre, 10 * s, 10 * s), -1});
@@ -181,7 +202,7 @@ void GeometryBuilder::layTaps() {
     const double size = 0.85 * s;
     const bool hangs = centre.y() > foot.y() + 9 * s;
     if (topology_.joint(vessel.at_end.joint)) {
-      square(centre + QPointF(0, (hangs ? -22 : 22) * size), foot, vessel.id);
+      tap(vessel.at_end, centre + QPointF(0, (hangs ? -22 : 22) * size), vessel.id);
       out_.dots.push_back({foot, 2.2 * std::min(1.0, s + 0.2), -1});
     }
     out_.marks.push_back({{PartKind::kVessel, static_cast<int>(i)}, vessel.id, Symbol::kVessel, centre, size, hangs ? 2 : 0,
@@ -189,8 +210,8 @@ void GeometryBuilder::layTaps() {
   }
   for (size_t i = 0; i < loop_.notes.size(); ++i) {
     const QPointF centre = px(loop_.notes[i].at);
-    out_.marks.push_back({{PartKind::kNote, static_cast<int>(i)}, loop_.notes[i].id, Symbol::kNote, centre, s, 0, 26, false,
-                          around(centre, 9 * s, 9 * s), -1});
+    out_.marks.push_back({{PartKind::kNote, static_cast<int>(i)}, loop_.notes[i].id, Symbol::kNote, centre, 0.7 * s, 0, 26,
+                          false, around(centre, 6 * s, 6 * s), -1});
   }
 }
 
@@ -239,7 +260,7 @@ Geometry GeometryBuilder::build() {
   markJoints();
   measure();
   // Gaps shrink with the symbols; where symbols are too small to read, crossings are too small to see.
-  out_.pieces = cutAtCrossings(lines_, out_.symbolScale < 0.3 ? 0 : std::min(1.0, out_.symbolScale / 0.75));
+  out_.pieces = cutAtCrossings(lines_, !options_.cut || out_.symbolScale < 0.3 ? 0 : std::min(1.0, out_.symbolScale / 0.75));
   return std::move(out_);
 }
 

@@ -68,6 +68,22 @@ std::vector<QPointF> GeometryBuilder::directionsAt(loop::Id joint) const {
   return out;
 }
 
+// As above, of every run that meets one end: single pipes count too.
+std::vector<QPointF> GeometryBuilder::waysTakenAt(const End& end) const {
+  std::vector<QPointF> out = directionsAt(end.joint);
+  for (const PartRef& part : topology_.at(end.joint)) {
+    if (part.kind != PartKind::kPipeRun) continue;
+    const loop::PipeRun& run = loop_.pipe_runs[static_cast<size_t>(part.index)];
+    const bool leaves = run.from == end;
+    const loop::Joint *other = topology_.joint(leaves ? run.to.joint : run.from.joint), *here = topology_.joint(end.joint);
+    if ((!leaves && !(run.to == end)) || !other || !here) continue;
+    const loop::Point next = run.bends.empty() ? other->at : leaves ? run.bends.front() : run.bends.back();
+    const QPointF direction = px(next) - px(here->at);
+    if (length(direction) > kStraight) out.push_back(direction / length(direction));
+  }
+  return out;
+}
+
 // Where the return stands from its supply: on the offset line of every run that meets here, so that corners are mitred.
 QPointF GeometryBuilder::pairShift(const std::vector<QPointF>& directions) const {
   const double gap = options_.pairGap;
@@ -100,7 +116,7 @@ void GeometryBuilder::setApart(const loop::Joint& joint, JointPoints& points) co
   if (terminal == parts.end() || directions.size() != 1 || std::abs(directions.front().y()) > 0.01) return;
   const QPointF at = px(loop_.terminals[static_cast<size_t>(terminal->index)].at);
   const double legs = 6 * out_.symbolScale;
-  if (std::abs(at.x() - points.supply.x()) > 2 || std::abs(at.y() - points.supply.y()) < 12 * out_.symbolScale) return;
+  if (std::abs(at.x() - points.supply.x()) > 3 * options_.pairGap || std::abs(at.y() - points.supply.y()) < 12 * out_.symbolScale) return;
   points.supply.setX(at.x() - legs);
   points.back.setX(at.x() + legs);
 }

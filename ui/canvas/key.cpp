@@ -8,7 +8,7 @@
 namespace ebbline::canvas {
 namespace {
 
-constexpr double kMargin = 20, kFoot = 18;
+constexpr double kMargin = 20, kFoot = 18, kSample = 32;
 
 QString keyText(double value) {
   const int decimals = value >= 1 ? 0 : std::min(6, static_cast<int>(std::ceil(-std::log10(value) - 1e-9)));
@@ -18,6 +18,10 @@ QString keyText(double value) {
 QString unitOf(quantity::Quantity of, quantity::UnitSystem units) {
   const std::string_view label = quantity::unitLabel(of, units);
   return QString::fromUtf8(label.data(), static_cast<qsizetype>(label.size()));
+}
+
+QString weightHead(quantity::UnitSystem units) {
+  return QObject::tr("flow, %1").arg(unitOf(quantity::Quantity::kFlow, units));
 }
 
 }  // namespace
@@ -37,35 +41,59 @@ std::vector<double> keyFlows(double most) {
   return out;
 }
 
+double ScenePainter::weightKeyWidth(const std::vector<double>& flows) const {
+  const QFontMetricsF metrics(scene_.theme.font(theme::Text::kNote));
+  double width = metrics.horizontalAdvance(weightHead(scene_.picture.units)) + 10;
+  for (const double flow : flows) width += kSample + 6 + metrics.horizontalAdvance(keyText(flow)) + 14;
+  return width - 14;
+}
+
+// Scale at the left, weights at the right of one strip; in a narrow picture the weights stand a row higher. The strip
+// hides what is drawn under it, and says so with a hairline.
+void ScenePainter::foot() {
+  const theme::Theme& theme = scene_.theme;
+  const std::vector<double> flows = keyFlows(
+      quantity::toShown(scene_.dressing.designFlow_m3s, quantity::Quantity::kFlow, scene_.picture.units));
+  const bool legend = scene_.dressing.scale.valid;
+  const double keyWidth = weightKeyWidth(flows), row = 24 * theme.textFactor;
+  const bool above = legend && legendBar().right() + 30 > view_.right() - kMargin - keyWidth;
+  const double top = (legend ? legendBar().top() - row : view_.bottom() - kFoot - row) - (above ? row : 0);
+  painter_.fillRect(QRectF(QPointF(view_.left(), top), view_.bottomRight()), theme.colours.sheet);
+  if (scene_.geometry.bounds.translated(origin_).bottom() > top) {
+    painter_.setPen(QPen(theme.colours.hairline, theme.stroke.hairline));
+    painter_.drawLine(QPointF(view_.left(), std::floor(top) + 0.5), QPointF(view_.right(), std::floor(top) + 0.5));
+  }
+  if (legend) colourLegend();
+  if (!flows.empty() && keyWidth <= view_.width() - 2 * kMargin) weightKey(above ? top + row - 4 : view_.bottom() - kFoot);
+}
+
 // "flow, L/s — 0.5 — 2 — 5 — 10", right foot, each number behind a line of the weight that flow has.
-void ScenePainter::weightKey() {
+void ScenePainter::weightKey(double y) {
   const theme::Theme& theme = scene_.theme;
   const double design = scene_.dressing.designFlow_m3s;
   const auto units = scene_.picture.units;
   const std::vector<double> flows = keyFlows(quantity::toShown(design, quantity::Quantity::kFlow, units));
-  if (flows.empty()) return;
   const QFont font = theme.font(theme::Text::kNote);
   const QFontMetricsF metrics(font);
-  const QString head = QObject::tr("flow, %1").arg(unitOf(quantity::Quantity::kFlow, units));
-  double width = metrics.horizontalAdvance(head) + 10;
-  for (const double flow : flows) width += 32 + 6 + metrics.horizontalAdvance(keyText(flow)) + 14;
-  const double y = view_.bottom() - kFoot;
-  double x = view_.right() - kMargin - width + 14;
-  if (width > view_.width() - 2 * kMargin) return;
-  const QRectF ground(x - 8, y - metrics.ascent() - 2, width + 4, metrics.height() + 6);
-  painter_.fillRect(ground, theme.colours.sheet);
+  double x = view_.right() - kMargin - weightKeyWidth(flows);
   painter_.setFont(font);
   painter_.setPen(theme.colours.ink3);
-  painter_.drawText(QPointF(x, y), head);
-  x += metrics.horizontalAdvance(head) + 10;
+  painter_.drawText(QPointF(x, y), weightHead(units));
+  x += metrics.horizontalAdvance(weightHead(units)) + 10;
   for (const double flow : flows) {
     const double weight = theme.strokeFactor *
                           weightOf(quantity::fromShown(flow, quantity::Quantity::kFlow, units), design, theme.stroke);
-    strokeLines({QLineF(x, y - 4, x + 32, y - 4)}, theme.colours.pipe, weight, false);
+    strokeLines({QLineF(x, y - 4, x + kSample, y - 4)}, theme.colours.pipe, weight, false);
     painter_.setPen(theme.colours.ink3);
-    painter_.drawText(QPointF(x + 38, y), keyText(flow));
-    x += 38 + metrics.horizontalAdvance(keyText(flow)) + 14;
+    painter_.drawText(QPointF(x + kSample + 6, y), keyText(flow));
+    x += kSample + 6 + metrics.horizontalAdvance(keyText(flow)) + 14;
   }
+}
+
+QRectF ScenePainter::legendBar() const {
+  const QFontMetricsF metrics(scene_.theme.font(theme::Text::kNote));
+  const double width = std::clamp(view_.width() * 0.36, 120.0, 320.0), height = 9;
+  return {view_.left() + kMargin, view_.bottom() - kFoot - metrics.height() - height + 4, width, height};
 }
 
 // The scale docked at the left foot, numbers under it on round values, the quantity and its unit above.
@@ -75,10 +103,7 @@ void ScenePainter::colourLegend() {
   const theme::Theme& theme = scene_.theme;
   const QFont font = theme.font(theme::Text::kNote);
   const QFontMetricsF metrics(font);
-  const double width = std::clamp(view_.width() * 0.36, 120.0, 320.0), height = 9;
-  const QRectF bar(view_.left() + kMargin, view_.bottom() - kFoot - metrics.height() - height, width, height);
-  painter_.fillRect(QRectF(view_.left() + 4, bar.top() - metrics.height() - 10, width + 40,
-                           view_.bottom() - bar.top() + metrics.height() + 4), theme.colours.sheet);
+  const QRectF bar = legendBar();
   const theme::ColourScale& colours =
       scene_.picture.colourBy == ColourBy::kPressure ? theme.cividis : theme.viridis;
   QLinearGradient gradient(bar.topLeft(), bar.topRight());

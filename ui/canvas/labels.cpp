@@ -57,6 +57,8 @@ class Placer {
       occupied_.add(solidBox(mark));
       wishFor(mark);
     }
+    for (const Piece& piece : geometry_.pieces)
+      occupied_.add(QRectF(piece.a, piece.b).normalized().adjusted(-1, -1, 1, 1));
     if (options_.sizes) wishForSizes();
     std::stable_sort(wishes_.begin(), wishes_.end(), [](const Wish& a, const Wish& b) { return a.rank < b.rank; });
     std::vector<Label> out;
@@ -69,6 +71,7 @@ class Placer {
 
   QRectF solidBox(const Mark& mark) const {
     double half = 11 * mark.scale, tall = half;
+    if (mark.part.kind == PartKind::kNote) half = tall = 9 * mark.scale;
     if (mark.part.kind == PartKind::kPlant) half = 34 * mark.scale, tall = (mark.portHalf + 12) * mark.scale;
     if (mark.part.kind == PartKind::kVessel) half = 9 * mark.scale, tall = 18 * mark.scale;
     return {mark.centre.x() - half, mark.centre.y() - tall, 2 * half, 2 * tall};
@@ -105,10 +108,10 @@ class Placer {
     if (mark.part.kind == PartKind::kPlant) wishForPlant(mark);
     if (mark.part.kind == PartKind::kPump) wishForInline(mark, pumpWords(loop.pumps[index]), 600, 3);
     if (mark.part.kind == PartKind::kValve) wishForInline(mark, tag(loop.valves[index]), 400, 6);
-    if (mark.part.kind == PartKind::kSensor) wishForSensor(mark, tag(loop.sensors[index]));
-    if (mark.part.kind == PartKind::kVessel) wishForSensor(mark, tag(loop.vessels[index]));
+    if (mark.part.kind == PartKind::kSensor) wishBeside(mark, tag(loop.sensors[index]), 4);
+    if (mark.part.kind == PartKind::kVessel) wishBeside(mark, tag(loop.vessels[index]), 4);
     if (mark.part.kind == PartKind::kNote)
-      wishForSensor(mark, QString::fromStdString(loop.notes[index].text).section('\n', 0, 0).left(60));
+      wishBeside(mark, QString::fromStdString(loop.notes[index].text).section('\n', 0, 0).left(60), 8);
   }
 
   QString pumpWords(const loop::Pump& pump) const {
@@ -132,9 +135,10 @@ class Placer {
       wish(mark.id, text, {right(edge, text, 600), left}, 600, LabelInk::kUnder, 1);
     }
     if (!options_.tags) return;
+    const double wide = metrics(px_, 400).horizontalAdvance(tag) / 2 + 4;
     const QPointF below(c.x(), c.y() + half + 1.15 * px_), above(c.x(), c.y() - half - 0.35 * px_);
-    std::vector<QPointF> places = mark.above ? std::vector{above, right({c.x() + half + 4, c.y() + 4}, tag, 400)}
-                                             : std::vector{below, right({c.x() + half + 4, c.y() + 8}, tag, 400)};
+    const QPointF right(c.x() + half + wide, c.y() + half - 2), left(c.x() - half - wide, c.y() + half - 2);
+    const std::vector<QPointF> places{mark.above ? above : below, right, left};
     wish(mark.id, tag, places, look.under ? 600 : 400, look.under ? LabelInk::kUnder : LabelInk::kQuiet, look.under ? 2 : 5);
   }
 
@@ -146,7 +150,8 @@ class Placer {
       return QString::fromStdString(quantity::formatWithUnit(quantity::fileToBase(file, of), of, picture_.units));
     };
     const auto bare = [this](double file, quantity::Quantity of) {
-      return theme::roundedText(quantity::toShown(quantity::fileToBase(file, of), of, picture_.units), 2);
+      const double value = quantity::toShown(quantity::fileToBase(file, of), of, picture_.units);
+      return theme::numberText(value, std::abs(value - std::round(value)) < 0.05 ? 0 : 1);
     };
     if (plant.supply_c && plant.return_c)
       lines.emplace_back(bare(*plant.supply_c, quantity::Quantity::kTemperature) + " / " +
@@ -175,26 +180,38 @@ class Placer {
     wish(mark.id, text, upright ? std::vector{beside, above} : std::vector{above, below}, weight, LabelInk::kPlain, rank);
   }
 
-  void wishForSensor(const Mark& mark, const QString& text) {
+  void wishBeside(const Mark& mark, const QString& text, int rank) {
     if (!options_.tags) return;
     const QPointF c = mark.centre;
     const double half = 10 * mark.scale;
     wish(mark.id, text,
          {right({c.x() + half + 5, c.y() + 0.35 * px_}, text, 400), {c.x(), c.y() + half + 1.1 * px_}, {c.x(), c.y() - half - 4}},
-         400, LabelInk::kPlain, 4);
+         400, LabelInk::kPlain, rank);
   }
 
-  // Size of a branch where it leaves its riser, over the return.
+  // A size is written where it begins: at a riser, or where the run before has another.
+  bool sizeBegins(const loop::PairedRun& run) const {
+    for (const PartRef& part : topology_.at(run.from)) {
+      if (part.kind != PartKind::kPairedRun) continue;
+      const loop::PairedRun& other = picture_.loop->paired_runs[static_cast<size_t>(part.index)];
+      const loop::Joint *a = topology_.joint(other.from), *b = topology_.joint(other.to);
+      if (other.to == run.from && other.pipe.size == run.pipe.size && a && b && std::abs(a->at.y_m - b->at.y_m) < 1e-6)
+        return false;
+    }
+    return true;
+  }
+
   void wishForSizes() {
     for (const Piece& piece : geometry_.pieces) {
       const Strand& strand = geometry_.strands[static_cast<size_t>(piece.strand)];
-      const bool level = std::abs(piece.a.y() - piece.b.y()) < 0.5, longEnough = std::abs(piece.a.x() - piece.b.x()) > 56;
-      if (strand.kind != PartKind::kPairedRun || strand.side != loop::Side::kReturn || !level || !longEnough) continue;
-      if (topology_.connections(strand.from) < 3 && piece.along < 1) continue;
+      const bool level = std::abs(piece.a.y() - piece.b.y()) < 0.5, longEnough = std::abs(piece.a.x() - piece.b.x()) > 40;
+      if (strand.kind != PartKind::kPairedRun || !strand.isReturn || !level || !longEnough || piece.along > 1) continue;
       const PartRef* part = topology_.part(strand.id);
-      if (!part || piece.along > 1 || topology_.at(strand.from.joint).size() < 3) continue;
-      const std::string& size = picture_.loop->paired_runs[static_cast<size_t>(part->index)].pipe.size;
-      wish(strand.id, QString::fromStdString(size), {{(piece.a.x() + piece.b.x()) / 2, piece.a.y() - 7}}, 400, LabelInk::kQuiet, 7);
+      if (!part) continue;
+      const loop::PairedRun& run = picture_.loop->paired_runs[static_cast<size_t>(part->index)];
+      if (sizeBegins(run))
+        wish(strand.id, QString::fromStdString(run.pipe.size), {{(piece.a.x() + piece.b.x()) / 2, piece.a.y() - 7}}, 400,
+             LabelInk::kQuiet, 7);
     }
   }
 

@@ -7,6 +7,7 @@
 namespace ebbline::canvas {
 namespace {
 
+constexpr double kLevelMargin = 16;
 constexpr double kTinySymbol = 0.3;  // below this a terminal is a filled square
 
 double length(QPointF v) { return std::hypot(v.x(), v.y()); }
@@ -57,31 +58,41 @@ void ScenePainter::paint() {
   openEnds();
   words();
   painter_.translate(-origin_);
-  if (scene_.options.key && scene_.dressing.solved) {
-    colourLegend();
-    weightKey();
-  }
+  if (scene_.options.levels) levelNames();
+  if (scene_.options.key && scene_.dressing.solved) foot();
   painter_.restore();
 }
 
 void ScenePainter::levels() {
   const theme::Theme& theme = scene_.theme;
-  const double margin = 16;
+  painter_.setPen(QPen(theme.colours.hairline, theme.stroke.hairline));
   for (const loop::Level& level : scene_.picture.loop->levels) {
     double y = origin_.y() - level.line_y_m * scene_.geometry.scale;
     if (pixmaps_) y = std::floor(y) + 0.5;
-    if (y < view_.top() || y > view_.bottom() + 20) continue;
-    painter_.setPen(QPen(theme.colours.hairline, theme.stroke.hairline));
-    painter_.drawLine(QPointF(view_.left() + margin, y), QPointF(view_.right() - margin + 4, y));
+    painter_.drawLine(QPointF(view_.left() + kLevelMargin, y), QPointF(view_.right() - kLevelMargin + 4, y));
+  }
+}
+
+// Last, with a halo: however far the drawing is moved, the names stand at the left and can be read.
+void ScenePainter::levelNames() {
+  const theme::Theme& theme = scene_.theme;
+  double above = -1e9;  // baseline of the name above; levels closer than a line of text go without
+  std::vector<const loop::Level*> levels;
+  for (const loop::Level& level : scene_.picture.loop->levels) levels.push_back(&level);
+  std::sort(levels.begin(), levels.end(), [](auto a, auto b) { return a->line_y_m > b->line_y_m; });
+  for (const loop::Level* level : levels) {
+    const double y = origin_.y() - level->line_y_m * scene_.geometry.scale;
+    if (y < view_.top() || y > view_.bottom() + 20 || y - above < 14 * theme.textFactor) continue;
+    above = y;
     const auto words = [&](double baseline, const QString& text, int weight) {
-      theme::drawHaloText(painter_, {view_.left() + margin, baseline}, text, theme.font(theme::Text::kNote, weight),
+      theme::drawHaloText(painter_, {view_.left() + kLevelMargin, baseline}, text, theme.font(theme::Text::kNote, weight),
                           theme.colours.ink3, theme.colours.sheet);
     };
-    words(y - 6, QString::fromStdString(level.name), 600);
+    words(y - 6, QString::fromStdString(level->name), 600);
     if (!scene_.options.elevations) continue;
     const QString height = QString::fromStdString(
-        quantity::formatWithUnit(level.elevation_m, quantity::Quantity::kLength, scene_.picture.units));
-    words(y + 16, (level.elevation_m > 0 ? "+" : "") + height, 400);
+        quantity::formatWithUnit(level->elevation_m, quantity::Quantity::kLength, scene_.picture.units));
+    words(y + 16, (level->elevation_m > 0 ? "+" : "") + height, 400);
   }
 }
 
@@ -101,7 +112,7 @@ void ScenePainter::strokeLines(const std::vector<QLineF>& lines, const QColor& c
 }
 
 // Dashes are laid as short lines: a pen's own dashes cost ten times as much on the screen. A line long enough begins
-// and ends with a dash, so that corners close; short ones share one rhythm across the sheet.
+// and ends with half a dash, so that corners close and joins do not show; short ones share one rhythm over the sheet.
 void ScenePainter::addDashes(const Piece& piece, bool leg, double width, std::vector<QLineF>& out) const {
   const QVector<qreal>& rule = scene_.theme.stroke.returnDash;
   const double size = leg ? 0.6 : 1;
@@ -110,12 +121,15 @@ void ScenePainter::addDashes(const Piece& piece, bool leg, double width, std::ve
   double whole = length(piece.b - piece.a), phase = 0;
   QPointF start = piece.a;
   if (whole >= 3 * (on + off) || leg) {
-    start -= unit * (leg ? 0 : width / 2);
-    whole += leg ? 0 : width;
-    const double count = std::max(1.0, std::round((whole + off) / (on + off)));
-    const double fit = (whole + off) / (count * (on + off));
+    const double fit = whole / (std::max(1.0, std::round(whole / (on + off))) * (on + off));
     on *= fit;
     off *= fit;
+    phase = on / 2;
+    if (!leg) {  // half the weight further at both ends closes the corners
+      start -= unit * (width / 2);
+      whole += width;
+      phase -= width / 2;
+    }
   } else {
     const double place = start.x() * std::abs(unit.x()) + start.y() * std::abs(unit.y());
     const bool backwards = unit.x() + unit.y() < 0;
@@ -165,8 +179,14 @@ void ScenePainter::tapsAndDots() {
   for (const Dot& dot : scene_.geometry.dots) {
     if (!visible_.contains(dot.at)) continue;
     const bool idle = dot.strand >= 0 && scene_.dressing.strands[static_cast<size_t>(dot.strand)].idle;
-    painter_.setBrush(idle ? theme.colours.pipeIdle : theme.colours.pipe);
-    painter_.drawEllipse(dot.at, dot.radius * theme.strokeFactor, dot.radius * theme.strokeFactor);
+    const QColor& ink = idle ? theme.colours.pipeIdle : theme.colours.pipe;
+    const double radius = dot.radius * theme.strokeFactor;
+    if (radius < 1.4) {  // too small to be seen round, and a rectangle costs a tenth
+      painter_.fillRect(QRectF(dot.at - QPointF(radius, radius), QSizeF(2 * radius, 2 * radius)), ink);
+      continue;
+    }
+    painter_.setBrush(ink);
+    painter_.drawEllipse(dot.at, radius, radius);
   }
 }
 
@@ -192,7 +212,7 @@ void ScenePainter::mark(const Mark& mark) {
   const theme::Theme& theme = scene_.theme;
   const bool chosen = mark.id == scene_.picture.selected && mark.id != 0;
   if (chosen) {
-    const QRectF ring = mark.box.adjusted(-4, -4, 4, 4);
+    const QRectF ring = mark.box.adjusted(-3, -3, 3, 3);
     painter_.setPen(QPen(theme.colours.accent, 2));
     painter_.setBrush(theme.colours.accentWash);
     painter_.drawRoundedRect(ring, theme.radius.button, theme.radius.button);
@@ -258,6 +278,15 @@ void ScenePainter::openEnds() {
       drawStrokes(painter_, strokesOf(Symbol::kOpenEnd), at, size, 0, scene_.theme.colours.under, scene_.theme.colours.sheet);
 }
 
+bool ScenePainter::onLevelLine(const Label& label) const {
+  if (!scene_.options.levels) return false;
+  const auto& levels = scene_.picture.loop->levels;
+  return std::any_of(levels.begin(), levels.end(), [&](const loop::Level& level) {
+    const double y = -level.line_y_m * scene_.geometry.scale;
+    return y > label.box.top() - 2 && y < label.box.bottom() + 2;
+  });
+}
+
 void ScenePainter::words() {
   const theme::Colours& c = scene_.theme.colours;
   for (const Label& label : scene_.labels) {
@@ -267,7 +296,7 @@ void ScenePainter::words() {
                        : label.ink == LabelInk::kUnder ? c.under
                        : label.ink == LabelInk::kAccent ? c.accent
                                                         : c.ink3;
-    if (label.ink == LabelInk::kUnder || label.ink == LabelInk::kAccent) {
+    if (label.ink == LabelInk::kUnder || onLevelLine(label)) {
       theme::drawHaloText(painter_, label.baseline, label.text, labelFont(label, scene_.theme), ink, c.sheet);
       continue;
     }

@@ -39,6 +39,7 @@ class ScenePainter {
 
  private:
   void levels();
+  void levelNames();
   void selectionBand();
   void lines();
   void tapsAndDots();
@@ -48,7 +49,11 @@ class ScenePainter {
   void smallTerminal(const Mark& mark);
   void openEnds();
   void words();
-  void weightKey();
+  bool onLevelLine(const Label& label) const;
+  void foot();
+  double weightKeyWidth(const std::vector<double>& flows) const;
+  void weightKey(double baseline);
+  QRectF legendBar() const;
   void colourLegend();
   QColor inkOf(const Mark& mark) const;
   void strokeLines(const std::vector<QLineF>& lines, const QColor& colour, double width, bool square);

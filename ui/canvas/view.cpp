@@ -8,13 +8,13 @@ namespace ebbline::canvas {
 namespace {
 
 GeometryOptions forFit(const theme::Theme& theme, const PaintOptions& options) {
-  return {theme.stroke.pairGap, options.largestSymbol, false};
+  return {theme.stroke.pairGap, options.largestSymbol, false, false};
 }
 
 // Room for the words that are not part of the geometry: level names left, plant's lines right, key at the foot.
 QMarginsF wordMargins(const loop::Loop& loop, const theme::Theme& theme, const PaintOptions& options) {
   const QFontMetricsF metrics(theme.font(theme::Text::kNote, 600));
-  QMarginsF out(28, 24, 28, 28);
+  QMarginsF out(28, 32, 28, 28);
   if (options.levels) {
     double widest = 0;
     for (const loop::Level& level : loop.levels)

@@ -173,6 +173,7 @@ QFont Theme::font(Text text, int weight) const {
   QFont out(families);
   out.setPixelSize(std::max(1, static_cast<int>(std::lround(style(text).px * textFactor))));
   out.setWeight(static_cast<QFont::Weight>(weight));
+  out.setHintingPreference(QFont::PreferNoHinting);  // even spacing, and the same widths on paper
   return out;
 }
 
