@@ -19,17 +19,17 @@
 
 namespace ebbline::part {
 
-inline constexpr double kLaminarEnd = 2000;      ///< Reynolds number where 64/Re ends. [common practice]
-inline constexpr double kTurbulentBegin = 4000;  ///< Reynolds number where Colebrook begins. [common practice]
-inline constexpr double kRoughnessDivisor = 3.7; ///< [published: Colebrook 1939]
-inline constexpr double kSmoothConstant = 2.51;  ///< [published: Colebrook 1939]
+inline constexpr double kLaminarEnd = 2000;       ///< Reynolds number where 64/Re ends. [common practice]
+inline constexpr double kTurbulentBegin = 4000;   ///< Reynolds number where Colebrook begins. [common practice]
+inline constexpr double kRoughnessDivisor = 3.7;  ///< [published: Colebrook 1939]
+inline constexpr double kSmoothConstant = 2.51;   ///< [published: Colebrook 1939]
 inline constexpr double kTwoOverLn10 = 0.86858896380650365530;  // 2/ln 10: 2 log10(y) = kTwoOverLn10 · ln y
 
 /// What one pipe remembers between evaluations. Only speed depends on it, not the answer (beyond 1e-12 relative).
 struct FrictionMemory {
-  double root = 0;     ///< Last 1/√f; 0 = nothing remembered.
-  double at = 0;       ///< Argument of the last logarithm taken …
-  double log_at = 0;   ///< … and its natural logarithm.
+  double root = 0;    ///< Last 1/√f; 0 = nothing remembered.
+  double at = 0;      ///< Argument of the last logarithm taken …
+  double log_at = 0;  ///< … and its natural logarithm.
 };
 
 /// Natural logarithm of y > 0, from the remembered one by ln(y/y0) = 2 artanh((y − y0)/(y + y0)) when near.

@@ -1,5 +1,6 @@
 #pragma once
-// Straight pipe with its loss coefficients: Δp = (f L/D + ΣK) ρ v|v|/2 [published: Darcy–Weisbach], with f of friction.h.
+// Straight pipe with its loss coefficients: Δp = (f L/D + ΣK) ρ v|v|/2 [published: Darcy–Weisbach], with f of
+// friction.h.
 
 #include "core/part/friction.h"
 

@@ -21,7 +21,9 @@ void throughThree(const std::vector<double>& x, const std::vector<double>& y, do
   c[0] = y[0] - x[0] * (c[1] + c[2] * x[0]);
 }
 
-ValueSlope parabola(const double (&c)[3], double x) { return {c[0] + x * (c[1] + c[2] * x), c[1] + 2 * c[2] * x}; }
+ValueSlope parabola(const double (&c)[3], double x) {
+  return {c[0] + x * (c[1] + c[2] * x), c[1] + 2 * c[2] * x};
+}
 
 ValueSlope cubic(const std::vector<double>& x, const std::vector<double>& y, const std::vector<double>& s, double at) {
   std::size_t i = 1;
@@ -29,7 +31,9 @@ ValueSlope cubic(const std::vector<double>& x, const std::vector<double>& y, con
   return cubicBetween(x[i - 1], y[i - 1], s[i - 1], x[i], y[i], s[i], at);
 }
 
-ValueSlope along(ValueSlope from, double distance) { return {from.value + from.slope * distance, from.slope}; }
+ValueSlope along(ValueSlope from, double distance) {
+  return {from.value + from.slope * distance, from.slope};
+}
 
 }  // namespace
 
@@ -114,7 +118,9 @@ double PumpCurve::shaftPower(double flow_m3s, double speed, double density_kg_m3
   return weight * flow * head / efficiency;
 }
 
-bool PumpCurve::hasEfficiency() const { return best_efficiency_ > 0 && best_flow_ > 0; }
+bool PumpCurve::hasEfficiency() const {
+  return best_efficiency_ > 0 && best_flow_ > 0;
+}
 
 bool PumpCurve::rises() const {
   if (readings_.size() < 2) return false;
@@ -125,8 +131,12 @@ bool PumpCurve::rises() const {
   return parabola(head_c_, std::max(0.0, flow_.front())).slope > least || parabola(head_c_, flow_.back()).slope > least;
 }
 
-double PumpCurve::lastFlow() const { return flow_.empty() ? 0 : flow_.back(); }
+double PumpCurve::lastFlow() const {
+  return flow_.empty() ? 0 : flow_.back();
+}
 
-double PumpCurve::shutOffHead() const { return headAtReference(0).value; }
+double PumpCurve::shutOffHead() const {
+  return headAtReference(0).value;
+}
 
 }  // namespace ebbline::part

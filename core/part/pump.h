@@ -36,8 +36,8 @@ class PumpCurve {
   bool hasEfficiency() const;
   /// True if head rises with flow anywhere within the data (two operating points are then possible).
   bool rises() const;
-  double lastFlow() const;    ///< Largest flow of the data at reference speed [m³/s].
-  double shutOffHead() const; ///< Head at zero flow and reference speed [m].
+  double lastFlow() const;     ///< Largest flow of the data at reference speed [m³/s].
+  double shutOffHead() const;  ///< Head at zero flow and reference speed [m].
   const std::vector<PumpReading>& readings() const { return readings_; }
 
  private:
@@ -47,10 +47,10 @@ class PumpCurve {
   std::vector<PumpReading> readings_;
   std::vector<double> flow_;
   std::vector<double> head_;
-  std::vector<double> head_slope_;        // at the readings, cubic only
+  std::vector<double> head_slope_;  // at the readings, cubic only
   std::vector<double> efficiency_;
   std::vector<double> efficiency_slope_;
-  double head_c_[3] = {0, 0, 0};          // parabola: c0 + c1 Q + c2 Q²
+  double head_c_[3] = {0, 0, 0};  // parabola: c0 + c1 Q + c2 Q²
   double efficiency_c_[3] = {0, 0, 0};
   double best_efficiency_ = 0;
   double best_flow_ = 0;

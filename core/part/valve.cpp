@@ -70,8 +70,11 @@ ValueSlope Characteristic::opening(double stroke) const {
   const double h = std::clamp(stroke, 0.0, 1.0);
   ValueSlope phi;
   switch (kind_) {
-    case CharacteristicKind::kLinear: return {leakage_ + (1 - leakage_) * h, 1 - leakage_};
-    case CharacteristicKind::kTable: phi = fromTable(h); break;
+    case CharacteristicKind::kLinear:
+      return {leakage_ + (1 - leakage_) * h, 1 - leakage_};
+    case CharacteristicKind::kTable:
+      phi = fromTable(h);
+      break;
     case CharacteristicKind::kEqualPercentage: {
       if (h < kRunToSeat) return run(h);
       const double value = std::exp(log_rangeability_ * (h - 1));
