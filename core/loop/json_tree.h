@@ -12,7 +12,7 @@
 namespace ebbline::loop {
 
 /// Most values (numbers, texts, lists, objects) read from one file: bounds the memory.
-inline constexpr std::size_t kMostValues = 12'000'000;
+inline constexpr std::size_t kMostValues = 8'000'000;
 
 class JsonTree {
  public:

@@ -1,7 +1,7 @@
 #include "core/loop/campus.h"
 
 #include <algorithm>
-#include <chrono>
+#include <ctime>
 #include <map>
 #include <set>
 
@@ -84,19 +84,23 @@ TEST(Campus, PumpHasTheFlowOfAllTerminals) {
 
 TEST(Campus, TenThousandTerminalsOpenAndSaveInASecond) {
   const Loop loop = campus(10000);
-  const auto start = std::chrono::steady_clock::now();
+  // Processor time, so that what else the machine does has no say.
+  const std::clock_t start = std::clock();
   const std::string text = writeLoop(loop);
-  const auto written = std::chrono::steady_clock::now();
+  const std::clock_t written = std::clock();
   const Reading reading = readLoop(text);
-  const auto read = std::chrono::steady_clock::now();
-  const auto seconds = [](auto from, auto to) { return std::chrono::duration<double>(to - from).count(); };
+  const std::clock_t read = std::clock();
+  const auto seconds = [](std::clock_t from, std::clock_t to) {
+    return static_cast<double>(to - from) / CLOCKS_PER_SEC;
+  };
   std::printf("10,000 terminals, %.1f MB: save %.3f s, open %.3f s\n", static_cast<double>(text.size()) / 1e6,
               seconds(start, written), seconds(written, read));
   EXPECT_TRUE(reading.loop == loop);
-#ifndef __SANITIZE_ADDRESS__
+#if defined(__SANITIZE_ADDRESS__) || defined(__SANITIZE_THREAD__)
+  GTEST_SKIP() << "times under a sanitizer mean nothing";
+#endif
   EXPECT_LT(seconds(start, written), 1.0);
   EXPECT_LT(seconds(written, read), 1.0);
-#endif
 }
 
 TEST(Campus, LargestIsWithinTheSizeThatIsRead) {
