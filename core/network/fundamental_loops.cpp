@@ -41,17 +41,13 @@ std::vector<int> rootOrder(const Network& network) {
   return order;
 }
 
-// Part of a loop's sum that no valve takes up.
+// Part of a loop's sum that no valve takes up; what is no number stays none.
 double unmet(double lacking_pa, Hold hold) {
   switch (hold) {
-    case Hold::kFree:
-      return std::abs(lacking_pa);
-    case Hold::kAlong:
-      return std::max(0.0, lacking_pa);
-    case Hold::kAgainst:
-      return std::max(0.0, -lacking_pa);
-    case Hold::kShut:
-      return 0;
+    case Hold::kFree: return std::abs(lacking_pa);
+    case Hold::kAlong: return lacking_pa <= 0 ? 0 : lacking_pa;
+    case Hold::kAgainst: return lacking_pa >= 0 ? 0 : -lacking_pa;
+    case Hold::kShut: return 0;
   }
   return 0;
 }
@@ -167,7 +163,8 @@ LoopSum FundamentalLoops::largestSum(const std::vector<double>& edge_loss_pa, co
     const Edge& edge = network_->edges[e];
     const double lacking = edge_loss_pa[e] - (pressure[edge.from] - pressure[edge.to]);
     const double amount = unmet(lacking, hold.empty() ? Hold::kFree : hold[e]);
-    if (sum.edge < 0 || !(amount <= sum.largest_pa)) sum = {amount, e};  // written so that a NaN is reported
+    if (std::isnan(amount)) return {amount, e};
+    if (sum.edge < 0 || amount > sum.largest_pa) sum = {amount, e};
   }
   return sum;
 }

@@ -143,18 +143,19 @@ void LoopFlow::roundOnTangents() {
   flow_ = moved;
 }
 
-// A terminal that reached its limit inside the tree would block every loop through it: it becomes a chord.
-bool LoopFlow::moveBlockedToChords() {
-  bool found = false;
+// A terminal that reached its limit inside the tree would block every loop through it: one that has not takes its
+// place, where there is one.
+void LoopFlow::moveBlockedToChords() {
+  std::vector<char> at_limit(flow_.size(), 0);
+  bool blocked = false;
   for (int e = 0; e < laws_->numEdges(); ++e) {
-    if (late_[e] || !limited(e) || laws_->shut(e) || !loops_.inTree(e) || flow_[e] < laws_->limit(e)) continue;
-    late_[e] = 1;
-    found = true;
+    at_limit[e] = limited(e) && !laws_->shut(e) && flow_[e] >= laws_->limit(e);
+    blocked = blocked || (at_limit[e] && loops_.inTree(e));
   }
-  if (!found) return false;
+  if (!blocked || at_limit == late_) return;
+  late_ = std::move(at_limit);
   loops_ = FundamentalLoops(*network_, ranks(*network_, *laws_, late_));
   findPaths();
-  return true;
 }
 
 std::vector<Hold> LoopFlow::holds() const {

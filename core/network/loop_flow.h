@@ -57,11 +57,11 @@ class LoopFlow {
   double correctionOf(double sum, double slope) const;
   void roundOneByOne();
   void roundOnTangents();
-  bool moveBlockedToChords();
+  void moveBlockedToChords();
 
   const Network* network_;
   EdgeLaws* laws_;
-  std::vector<char> late_;  // edges put into the tree last, because they stood at their limit inside it
+  std::vector<char> late_;  // edges put into the tree last, because they stood at their limit
   FundamentalLoops loops_;
   std::vector<LoopPath> paths_;
   std::vector<double> flow_;
