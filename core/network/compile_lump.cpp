@@ -1,6 +1,8 @@
 #include <algorithm>
+#include <numeric>
 
 #include "core/network/compile_draft.h"
+#include "core/network/linear_system.h"
 
 namespace ebbline::network {
 
@@ -32,6 +34,8 @@ class Lumper {
   std::vector<ChainStep> chainFrom(int link);
   void numberNodes();
   void addEdge(std::vector<ChainStep> chain);
+  void renumberNodes();
+  void sortEdges();
   void placeEnds();
 
   Draft& draft_;
@@ -129,6 +133,52 @@ void Lumper::addEdge(std::vector<ChainStep> chain) {
   network_.edges.push_back(edge);
 }
 
+/// Nodes in the order in which the linear system eliminates them.
+void Lumper::renumberNodes() {
+  const LinearSystem system(network_);
+  std::vector<double> elevation(network_.num_nodes);
+  for (int node = 0; node < network_.num_nodes; ++node) elevation[system.step(node)] = network_.node_elevation_m[node];
+  network_.node_elevation_m = std::move(elevation);
+  for (Edge& edge : network_.edges) {
+    edge.from = system.step(edge.from);
+    edge.to = system.step(edge.to);
+  }
+  for (int& node : node_)
+    if (node >= 0) node = system.step(node);
+  network_.datum_node = system.step(network_.datum_node);
+  network_.ordered = true;
+}
+
+/// Edges by the node that is eliminated first, and their elements and laws in the same order.
+void Lumper::sortEdges() {
+  std::vector<int> order(network_.edges.size());
+  std::iota(order.begin(), order.end(), 0);
+  const auto key = [&](int e) { return std::min(network_.edges[e].from, network_.edges[e].to); };
+  std::stable_sort(order.begin(), order.end(), [&](int a, int b) { return key(a) < key(b); });
+  std::vector<Edge> edges;
+  std::vector<Element> elements;
+  std::vector<int> edge_at(order.size());
+  std::vector<int> element_at(elements_.size());
+  for (const int e : order) {
+    edge_at[e] = static_cast<int>(edges.size());
+    Edge edge = network_.edges[e];
+    for (int i = 0; i < edge.num_elements; ++i) {
+      element_at[edge.first_element + i] = static_cast<int>(elements.size());
+      elements.push_back(std::move(elements_[edge.first_element + i]));
+    }
+    edge.first_element = static_cast<int>(elements.size()) - edge.num_elements;
+    edges.push_back(edge);
+  }
+  network_.edges = std::move(edges);
+  elements_ = std::move(elements);
+  for (int& index : new_index_) index = element_at[index];
+  for (EndPlace& place : place_) {
+    if (place.edge < 0) continue;
+    place.edge = edge_at[place.edge];
+    place.element = element_at[place.element];
+  }
+}
+
 void Lumper::placeEnds() {
   for (std::size_t p = 0; p < draft_.points.size(); ++p) {
     const DraftPoint& point = draft_.points[p];
@@ -155,10 +205,12 @@ void Lumper::run() {
   new_index_.assign(network_.elements.size(), -1);
   elements_.reserve(network_.elements.size());
   for (std::vector<ChainStep>& chain : chains) addEdge(std::move(chain));
+  network_.datum_node = node_[draft_.datum_point];
+  renumberNodes();
+  sortEdges();
   network_.elements = std::move(elements_);
   for (TerminalLaw& terminal : network_.terminals) terminal.element = new_index_[terminal.element];
   for (PumpLaw& pump : network_.pumps) pump.element = new_index_[pump.element];
-  network_.datum_node = node_[draft_.datum_point];
   network_.datum_elevation_m = draft_.points[draft_.datum_point].elevation_m;
   placeEnds();
 }

@@ -118,7 +118,7 @@ void LinearSystem::order(const Network& network) {
   const int n = network.num_nodes - 1;
   diagonal_.assign(n, 0.0);
   step_ = asTheyCome(network);
-  for (int pass = 0; pass < 2 && n > 0; ++pass) {
+  for (int pass = network.ordered ? 2 : 0; pass < 2 && n > 0; ++pass) {
     const Lists lists = neighbours(network, step_, n);
     const std::vector<int> position = pass == 0 ? minimumDegree(lists) : postorder(eliminationTree(lists));
     for (int& step : step_)

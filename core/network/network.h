@@ -94,6 +94,9 @@ struct Network {
   double density_kg_m3 = 1000;
   double viscosity_pa_s = 1e-3;    ///< Dynamic.
   double vapour_pressure_pa = 0;   ///< Absolute.
+  /// Nodes are numbered in a good order of elimination, the datum last, and edges follow their nodes: what is used
+  /// together lies together in memory. compile does so; a network built by hand need not.
+  bool ordered = false;
   int num_nodes = 0;
   int datum_node = 0;              ///< Where the vessel connects (or the first node of the supply).
   double datum_gauge_pa = 0;

@@ -63,7 +63,7 @@ TEST(PublishedFriction, HandbookPressureDrops) {
     const Handbook own = handbook(table.number(row, "ID_in"), table.number(row, "flow_gpm"));
     EXPECT_NEAR(own.gradient, table.number(row, "hf_calc"), test::halfLastDigit(table.text(row, "hf_calc")));
     // The print of NPS 20 at 1000 gpm does not fit its own table: from 1000 to 1800 gpm its loss rises with the power
-    // 1.97 of flow, where every other pair of rows has 1.8 to 1.9. It lies 8 % below; all others must agree.
+    // 1.97 of flow, where other neighbours have 1.7 to 1.9. It lies 8 % below; all others must agree.
     const bool misprint = table.text(row, "NPS_in") == "20" && table.number(row, "flow_gpm") == 1000;
     if (misprint) continue;
     const double printed = table.number(row, "hf_ft_per_100ft_pub");
