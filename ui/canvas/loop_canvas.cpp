@@ -6,7 +6,6 @@
 
 #include "ui/canvas/canvas_cache.h"
 #include "ui/canvas/facts.h"
-#include "ui/canvas/hit_test.h"
 #include "ui/canvas/view.h"
 
 namespace ebbline::canvas {
@@ -113,6 +112,7 @@ void LoopCanvas::ensureCache() const {
         makeGeometry(loop_, *cache.topology, scale_,
                      {theme.stroke.pairGap * theme.strokeFactor, options_.largestSymbol * theme.strokeFactor, true});
     cache.geometryValid = true;
+    cache.hits.reset();
     cache.dressing = nullptr;
     cache.labelsValid = false;
     cache.pixmaps.clear();
@@ -159,7 +159,8 @@ QPointF LoopCanvas::toScreen(loop::Point at) const { return origin_ + QPointF(at
 
 loop::Id LoopCanvas::hit(QPointF place) const {
   ensureCache();
-  return thingAt(cache_->geometry, place - origin_);
+  if (!cache_->hits) cache_->hits.emplace(cache_->geometry);
+  return cache_->hits->at(place - origin_);
 }
 
 QString LoopCanvas::describe(loop::Id id) const {

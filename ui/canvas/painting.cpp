@@ -212,7 +212,10 @@ void ScenePainter::mark(const Mark& mark) {
   const theme::Theme& theme = scene_.theme;
   const bool chosen = mark.id == scene_.picture.selected && mark.id != 0;
   if (chosen) {
-    const QRectF ring = mark.box.adjusted(-3, -3, 3, 3);
+    const double half = 11 * mark.scale + 3;
+    const QRectF ring = mark.part.kind == PartKind::kTerminal
+                            ? QRectF(mark.centre - QPointF(half, half), QSizeF(2 * half, 2 * half))
+                            : mark.box.adjusted(-3, -3, 3, 3);
     painter_.setPen(QPen(theme.colours.accent, 2));
     painter_.setBrush(theme.colours.accentWash);
     painter_.drawRoundedRect(ring, theme.radius.button, theme.radius.button);

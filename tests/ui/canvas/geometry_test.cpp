@@ -171,13 +171,15 @@ TEST(Key, ShowsAtMostFourRoundFlowsUpToDesign) {
 
 TEST(Hit, EverySymbolIsFoundAtItsCentreAndEveryRunOnItsLine) {
   const Drawn drawn(12);
-  for (const Mark& mark : drawn.geometry.marks) EXPECT_EQ(thingAt(drawn.geometry, mark.centre), mark.id);
+  const HitTest hits(drawn.geometry);
+  for (const Mark& mark : drawn.geometry.marks) EXPECT_EQ(hits.at(mark.centre), mark.id);
   for (const Piece& piece : drawn.geometry.pieces) {
     const Strand& strand = drawn.geometry.strands[static_cast<size_t>(piece.strand)];
     if (strand.leg || std::hypot(piece.b.x() - piece.a.x(), piece.b.y() - piece.a.y()) < 40) continue;
-    EXPECT_EQ(thingAt(drawn.geometry, (piece.a + piece.b) / 2), strand.id);
+    EXPECT_EQ(hits.at((piece.a + piece.b) / 2), strand.id);
   }
-  EXPECT_EQ(thingAt(drawn.geometry, {-500, -500}), 0u);
+  EXPECT_EQ(hits.at({-500, -500}), 0u);
+  EXPECT_EQ(HitTest().at({0, 0}), 0u);
 }
 
 }  // namespace

@@ -2,6 +2,7 @@
 
 #include <QApplication>
 #include <QPainter>
+#include <QPdfWriter>
 #include <QPixmap>
 #include <cstdio>
 
@@ -51,6 +52,22 @@ void sample(const QString& folder, const QString& file, QSize size) {
   take(canvas, folder + "/" + file.section('/', -1).section('.', 0, 0) + QString("-%1.png").arg(size.width()));
 }
 
+void page(const QString& folder) {
+  QPdfWriter writer(folder + "/page.pdf");
+  writer.setPageSize(QPageSize(QPageSize::A4));
+  writer.setResolution(96);
+  QPainter painter(&writer);
+  const loop::Loop loop = trial::building(4, 6);
+  const network::Results results = trial::results(loop, 0.46);
+  canvas::LoopPicture picture;
+  picture.loop = &loop;
+  picture.results = &results;
+  canvas::paintLoop(painter, {0, 40, 700, 420}, picture, theme::printTheme());
+  picture.colourBy = canvas::ColourBy::kPressure;
+  picture.units = quantity::UnitSystem::kIp;
+  canvas::paintLoop(painter, {0, 500, 700, 420}, picture, theme::printTheme());
+}
+
 }  // namespace
 
 int main(int argc, char** argv) {
@@ -58,6 +75,7 @@ int main(int argc, char** argv) {
   const QString folder = argc > 1 ? argv[1] : ".";
   for (const theme::Mode mode : {theme::Mode::kLight, theme::Mode::kDark})
     for (const QSize size : {QSize(568, 700), QSize(1280, 800), QSize(1920, 1080)}) pictures(folder, mode, size);
+  page(folder);
   for (int i = 2; i < argc; ++i)
     for (const QSize size : {QSize(568, 700), QSize(1280, 800)}) sample(folder, argv[i], size);
   return 0;

@@ -16,14 +16,13 @@ class Builder {
     loop_.joints.push_back({next_, "", paired, {x, y}, level, 0});
     return next_++;
   }
-  void paired(Id from, Id to, const std::string& size, std::vector<loop::Point> bends = {}) {
+  void paired(Id from, Id to, const std::string& size) {
     loop::PairedRun run;
     run.id = next_++;
     run.tag = "R" + std::to_string(++runs_);
     run.from = from;
     run.to = to;
     run.pipe.size = size;
-    run.bends = std::move(bends);
     loop_.paired_runs.push_back(run);
   }
   void single(End from, End to, std::vector<loop::Point> bends = {}) {
@@ -48,7 +47,7 @@ void addFloor(Builder& b, int floor, int perFloor, Id tee, double y, Id level) {
   for (int i = 1; i <= perFloor; ++i) {
     const double x = 6 + 7.2 * i;
     const Id at = b.joint(x, y, true, level);
-    b.paired(before, at, i == 1 ? "DN 50" : "DN 40", floor > 0 && i == 1 && tee == 0 ? std::vector<loop::Point>{} : std::vector<loop::Point>{});
+    b.paired(before, at, i == 1 ? "DN 50" : "DN 40");
     loop::Terminal terminal;
     terminal.id = b.next();
     terminal.tag = "T" + std::to_string(floor) + "-" + std::to_string(i);
