@@ -108,7 +108,6 @@ const char* const kTables = R"(
 QAbstractItemView { background: transparent; alternate-background-color: transparent; border: 0; outline: 0; gridline-color: @hairline; selection-background-color: @selection; selection-color: @ink1; }
 QTableView::item, QTreeView::item, QListView::item { border: 0; border-bottom: 1px solid @hairline; padding: 0 8px; }
 QTableView::item:selected, QTreeView::item:selected, QListView::item:selected { background: @selection; color: @ink1; }
-QTableView:focus::item:focus { border: 2px solid @focus; }
 QHeaderView { background: transparent; border: 0; }
 QHeaderView::section { background: transparent; color: @ink3; border: 0; border-bottom: 1px solid @rule; padding: 4px 8px; font-size: #notepx; font-weight: 400; }
 QTableCornerButton::section { background: transparent; border: 0; }
