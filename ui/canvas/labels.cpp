@@ -58,7 +58,7 @@ class Placer {
       wishFor(mark);
     }
     for (const Piece& piece : geometry_.pieces)
-      occupied_.add(QRectF(piece.a, piece.b).normalized().adjusted(-1, -1, 1, 1));
+      lines_.add(QRectF(piece.a, piece.b).normalized().adjusted(-1, -1, 1, 1));
     if (options_.sizes) wishForSizes();
     std::stable_sort(wishes_.begin(), wishes_.end(), [](const Wish& a, const Wish& b) { return a.rank < b.rank; });
     std::vector<Label> out;
@@ -132,7 +132,8 @@ class Placer {
       const QString text = shortfallText(look.shortfall);
       const QPointF edge(c.x() + 12 * mark.scale + 8 * mark.scale + 3, c.y() - 9.3 * mark.scale + 0.35 * px_);
       const QPointF left(c.x() - half - 4 - metrics(px_, 600).horizontalAdvance(text) / 2, edge.y());
-      wish(mark.id, text, {right(edge, text, 600), left}, 600, LabelInk::kUnder, 1);
+      const QPointF above(c.x(), c.y() - half - 3);
+      wish(mark.id, text, {right(edge, text, 600), left, above, above - QPointF(0, 0.9 * px_)}, 600, LabelInk::kUnder, 1);
     }
     if (!options_.tags) return;
     const double wide = metrics(px_, 400).horizontalAdvance(tag) / 2 + 4;
@@ -222,7 +223,8 @@ class Placer {
     for (const QPointF& centre : wish.centres) {
       label.baseline = centre - QPointF(width / 2, 0);
       label.box = QRectF(label.baseline.x() - 1, label.baseline.y() - 0.78 * label.px, width + 2, 0.98 * label.px);
-      if (!occupied_.isFree(label.box)) continue;
+      // A shortfall has to be told: it may stand on a line, with its halo, rather than not at all.
+      if (!occupied_.isFree(label.box) || (label.ink != LabelInk::kUnder && !lines_.isFree(label.box))) continue;
       occupied_.add(label.box);
       out.push_back(std::move(label));
       return;
@@ -237,7 +239,8 @@ class Placer {
   const PaintOptions& options_;
   int px_ = 11;
   mutable QHash<int, QFontMetricsF> metrics_;
-  Occupied occupied_;
+  Occupied occupied_;  ///< Symbols and labels already set.
+  Occupied lines_;
   std::vector<Wish> wishes_;
 };
 

@@ -2,6 +2,8 @@
 
 #include <gtest/gtest.h>
 
+#include <algorithm>
+#include <map>
 #include <set>
 
 #include "core/loop/file.h"
@@ -81,6 +83,16 @@ TEST(Labels, ShortfallsAreWrittenBesideTheirTerminal) {
   EXPECT_EQ(found[QString::fromUtf8("−17\u00a0%")], drawn.loop.terminals[0].id);
   EXPECT_EQ(found[QString::fromUtf8("−8\u00a0%")], drawn.loop.terminals[1].id);
   EXPECT_EQ(overlaps(drawn.labels), 0);
+}
+
+TEST(Labels, ShortfallsAreWrittenEvenWhereTerminalsStandClose) {
+  for (const double scale : {5.0, 6.0, 7.0, 8.0, 12.0}) {
+    const Labelled drawn(trial::building(4, 6), scale, true);
+    if (drawn.labels.empty()) continue;  // all text is below 6 px
+    const auto told = std::count_if(drawn.labels.begin(), drawn.labels.end(),
+                                    [](const Label& label) { return label.text.endsWith('%') && label.ink == LabelInk::kUnder; });
+    EXPECT_EQ(told, 2) << "at " << scale << " px per metre";
+  }
 }
 
 TEST(Labels, NoneIsSmallerThanSixPixels) {
