@@ -17,9 +17,10 @@ part::Characteristic characteristicOf(const loop::ControlValve& valve) {
     table.push_back({point.stroke_percent * kPercent, point.kv_percent * kPercent});
   using loop::Characteristic;
   using part::CharacteristicKind;
-  const CharacteristicKind kind = valve.characteristic == Characteristic::kLinear  ? CharacteristicKind::kLinear
-                                  : valve.characteristic == Characteristic::kTable ? CharacteristicKind::kTable
-                                                                                   : CharacteristicKind::kEqualPercentage;
+  const CharacteristicKind kind = valve.characteristic == Characteristic::kLinear ? CharacteristicKind::kLinear
+                                  : valve.characteristic == Characteristic::kTable
+                                      ? CharacteristicKind::kTable
+                                      : CharacteristicKind::kEqualPercentage;
   return {kind, valve.rangeability, valve.leakage_percent * kPercent, std::move(table)};
 }
 
@@ -35,7 +36,6 @@ EdgeLaws::EdgeLaws(const Network& network)
       pressure_per_head_(network.density_kg_m3 * quantity::kGravity) {
   pipes_.reserve(network.pipes.size());
   for (int e = 0; e < numEdges(); ++e) addEdge(e);
-  memory_.resize(pipes_.size());
   for (const TerminalLaw& terminal : network.terminals) characteristics_.push_back(characteristicOf(terminal.valve));
   Request open;
   open.terminals.assign(network.terminals.size(), {loop::DemandKind::kPosition, 0, 1});
@@ -46,21 +46,23 @@ void EdgeLaws::addEdge(int e) {
   Row& row = rows_[e];
   const Edge& edge = network_->edges[e];
   row.first_pipe = static_cast<int>(pipes_.size());
-  row.first_power = static_cast<int>(powers_.size());
-  row.first_pump = static_cast<int>(pumps_.size());
+  first_power_.push_back(static_cast<int>(powers_.size()));
+  first_pump_.push_back(static_cast<int>(pumps_.size()));
   for (int i = edge.first_element; i < edge.first_element + edge.num_elements; ++i) {
     const Element& element = network_->elements[i];
     fixed_quadratic_[e] += element.quadratic_pa_s2_m6;
-    row.always_shut = row.always_shut || element.shut;
+    if (element.shut) row.always_shut = 1;
     if (element.terminal >= 0) edge_of_terminal_[row.terminal = element.terminal] = e;
     if (element.pump >= 0) {
       edge_of_pump_[element.pump] = e;
       pumps_.push_back({&network_->pumps[element.pump].curve, element.reversed ? -1.0 : 1.0});
     }
     for (int p = element.first_pipe; p < element.first_pipe + element.num_pipes; ++p) {
-      pipes_.push_back(constantsOf(network_->pipes[p]));
-      fixed_quadratic_[e] += pipes_.back().quadratic;
-      if (pipes_.back().friction == 0) pipes_.pop_back();
+      const part::PipeConstants pipe = constantsOf(network_->pipes[p]);
+      fixed_quadratic_[e] += pipe.quadratic;
+      if (pipe.friction == 0) continue;
+      pipes_.push_back({pipe, {}});
+      turbulent_begin_.push_back(pipe.turbulent_begin);
     }
     for (int p = element.first_power; p < element.first_power + element.num_powers; ++p) {
       if (network_->powers[p].exponent == 2)
@@ -69,15 +71,20 @@ void EdgeLaws::addEdge(int e) {
         powers_.push_back(network_->powers[p]);
     }
   }
-  row.num_pipes = static_cast<int>(pipes_.size()) - row.first_pipe;
-  row.num_powers = static_cast<int>(powers_.size()) - row.first_power;
-  row.num_pumps = static_cast<int>(pumps_.size()) - row.first_pump;
+  row.num_pipes = static_cast<std::uint16_t>(static_cast<int>(pipes_.size()) - row.first_pipe);
+  row.num_powers = static_cast<std::uint8_t>(static_cast<int>(powers_.size()) - first_power_.back());
+  row.num_pumps = static_cast<std::uint8_t>(static_cast<int>(pumps_.size()) - first_pump_.back());
   row.quadratic = fixed_quadratic_[e];
 }
 
 part::PipeConstants EdgeLaws::constantsOf(const PipeLaw& pipe) const {
+#ifdef EBBLINE_SEEDED_FAULT_LAW  // only in the copy that a test must catch: one per mille of every pipe's length
+  return part::pipeConstants(1.001 * pipe.length_m, pipe.bore_m, pipe.roughness_m, pipe.loss_k, network_->density_kg_m3,
+                             network_->viscosity_pa_s);
+#else
   return part::pipeConstants(pipe.length_m, pipe.bore_m, pipe.roughness_m, pipe.loss_k, network_->density_kg_m3,
                              network_->viscosity_pa_s);
+#endif
 }
 
 void EdgeLaws::setRequest(const Request& request) {
@@ -94,7 +101,9 @@ void EdgeLaws::setRequest(const Request& request) {
   }
 }
 
-void EdgeLaws::forget() { std::fill(memory_.begin(), memory_.end(), part::FrictionMemory{}); }
+void EdgeLaws::forget() {
+  for (PipeRow& pipe : pipes_) pipe.memory = {};
+}
 
 LossSlope EdgeLaws::pumpLoss(const PumpRow& pump, double flow_m3s, double speed_squared) const {
   const double speed = std::sqrt(speed_squared);

@@ -15,22 +15,25 @@ double Newton::pressureScale() const {
 }
 
 /// Continuity at every node with the flows of the linearised laws: A · change = −imbalance.
+void Newton::assembleEdge(int e) {
+  const Row& row = rows_[e];
+  const double flow = row.flow + row.conductance * row.surplus;
+  right_[row.from] -= flow;
+  right_[row.to] += flow;
+  if (row.conductance > 0) system_.add(e, row.conductance);
+}
+
 void Newton::assemble() {
   system_.clear();
-  for (std::size_t k = 0; k < draw_.size(); ++k) change_[k] = -draw_[k];
+  for (std::size_t k = 0; k < draw_.size(); ++k) right_[k] = -draw_[k];
   const int count = static_cast<int>(rows_.size());
-  for (int e = 0; e < count; ++e) {
-    const Row& row = rows_[e];
-    const double flow = row.flow + row.conductance * row.surplus;
-    change_[row.from] -= flow;
-    change_[row.to] += flow;
-    if (row.conductance > 0) system_.add(e, row.conductance);
-  }
-  for (const int step : pinned_) system_.pin(step);
+  for (int e = 0; e < count; ++e) assembleEdge(e);
 }
 
 bool Newton::solveRound() {
+  for (const int step : pinned_) system_.pin(step);
   if (!system_.factorise()) return false;
+  change_.swap(right_);
   system_.solve(change_);
   change_.back() = 0;  // the datum
   speed_change_ = 0;
@@ -83,12 +86,30 @@ void Newton::openEdge(int e, double flow) {
 void Newton::holdEdge(int e) {
   Row& row = rows_[e];
   row.standing = Standing::kHeld;
-  row.flow = row.limit;
-  row.held_loss = laws_.evaluate(e, row.limit, speed_squared_).loss_pa;
+  row.flow = limit_[row.terminal];
+  held_loss_[row.terminal] = laws_.evaluate(e, row.flow, speed_squared_).loss_pa;
   row.conductance = row.surplus = 0;
 }
 
-/// Moves pressures and flows, and lets each requesting terminal take the branch of its law that the step points to.
+/// Moves one edge with the step; false if it changed its standing. A requesting terminal takes the branch of its law
+/// that the step points to.
+bool Newton::moveEdge(int e, double slack) {
+  Row& row = rows_[e];
+  if (row.standing == Standing::kHeld) {
+    if (pressure_[row.from] - pressure_[row.to] >= held_loss_[row.terminal] - slack) return true;
+    openEdge(e, limit_[row.terminal]);
+    return false;
+  }
+  const double moved = row.flow + share_ * row.conductance * (row.surplus + change_[row.from] - change_[row.to]);
+  if (row.terminal >= 0 && moved > limit_[row.terminal]) {
+    holdEdge(e);
+    return false;
+  }
+  openEdge(e, moved);
+  return true;
+}
+
+/// Moves pressures and flows, and puts the next round together on the way.
 void Newton::takeStep() {
   speed_squared_ += share_ * speed_change_;
   for (std::size_t k = 0; k < pressure_.size(); ++k) pressure_[k] += share_ * change_[k];
@@ -96,25 +117,15 @@ void Newton::takeStep() {
   flips_ = 0;
   worst_surplus_ = 0;
   worst_edge_ = -1;
+  system_.clear();
+  for (std::size_t k = 0; k < draw_.size(); ++k) right_[k] = -draw_[k];
   const int count = static_cast<int>(rows_.size());
   for (int e = 0; e < count; ++e) {
-    Row& row = rows_[e];
-    if (row.standing == Standing::kShut) continue;
-    if (row.standing == Standing::kHeld) {
-      if (pressure_[row.from] - pressure_[row.to] >= row.held_loss - slack) continue;
-      ++flips_;
-      openEdge(e, row.limit);
-    } else {
-      const double moved = row.flow + share_ * row.conductance * (row.surplus + change_[row.from] - change_[row.to]);
-      if (moved > row.limit) {
-        ++flips_;
-        holdEdge(e);
-        continue;
-      }
-      openEdge(e, moved);
-    }
-    if (std::abs(row.surplus) <= worst_surplus_) continue;
-    worst_surplus_ = std::abs(row.surplus);
+    if (rows_[e].standing == Standing::kShut) continue;
+    if (!moveEdge(e, slack)) ++flips_;
+    assembleEdge(e);
+    if (std::abs(rows_[e].surplus) <= worst_surplus_) continue;
+    worst_surplus_ = std::abs(rows_[e].surplus);
     worst_edge_ = e;
   }
 }
@@ -167,14 +178,17 @@ void Newton::rounds(const std::stop_token& stop) {
   rounds_without_gain_ = 0;
   share_ = 1;
   if (border_.active()) tapsSettled();
+  assemble();
   for (; summary_.rounds < tolerance_.most_rounds;) {
     if (stop.stop_requested()) {
       summary_.ended = Ended::kCancelled;
       summary_.why = "stopped before the end";
       return;
     }
-    if (!always_connected_ && (summary_.rounds == 0 || flips_ > 0) && !findParts()) return;
-    assemble();
+    if (!always_connected_ && (summary_.rounds == 0 || flips_ > 0)) {
+      if (!findParts()) return;
+      assemble();
+    }
     if (!solveRound()) break;
     ++summary_.rounds;
     takeStep();

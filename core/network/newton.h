@@ -34,8 +34,7 @@ class Newton {
     double flow = 0;
     double surplus = 0;      // p_from − p_to − loss
     double conductance = 0;  // 1/slope; 0 unless open
-    double held_loss = 0;    // loss of the open valve at the limit, once held
-    double limit = 0;
+    int terminal = -1;
     Standing standing = Standing::kOpen;
   };
 
@@ -44,9 +43,11 @@ class Newton {
   bool solveRound();
   void chooseSpeed();
   void takeStep();
+  bool moveEdge(int edge, double slack);
   void openEdge(int edge, double flow);
   void holdEdge(int edge);
   void assemble();
+  void assembleEdge(int edge);
   bool settled();
   bool tapsSettled();
   void watchProgress();
@@ -83,10 +84,13 @@ class Newton {
   double reference_flow_ = 0;  // sum of what terminals and draws ask for by design [m³/s]
 
   std::vector<Row> rows_;
-  std::vector<double> by_speed_;  // dloss/d(n²), pumps only
+  std::vector<double> held_loss_;  // of each terminal: loss of its edge at the limit with the valve open, once held
+  std::vector<double> limit_;      // of each terminal
+  std::vector<double> by_speed_;   // dloss/d(n²), pumps only
   std::vector<int> pump_edges_;
   std::vector<double> pressure_;   // by steps, datum last
-  std::vector<double> change_;     // right-hand side, then Newton's step in pressure, by steps
+  std::vector<double> right_;      // right-hand side of the next round, by steps
+  std::vector<double> change_;     // Newton's step in pressure, by steps
   std::vector<double> by_border_;  // the same for a change of x = n²
   std::vector<double> draw_;       // fixed draws by steps
   std::vector<int> pinned_;        // steps tied because their part has no datum

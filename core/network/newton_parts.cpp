@@ -59,7 +59,7 @@ bool Newton::findParts() {
       const bool too_much = to != datum_part && gain[to] > negligible;
       const bool too_little = from != datum_part && gain[from] < -negligible;
       if (!too_much && !too_little) continue;
-      openEdge(e, rows_[e].limit);
+      openEdge(e, limit_[rows_[e].terminal]);
       ++opened;
     }
     if (opened > 0) continue;

@@ -54,13 +54,13 @@ void Newton::pressureResidual() {
     const double drop = pressure_[row.from] - pressure_[row.to];
     edge_loss_[e] = drop - row.surplus;
     if (row.standing == Standing::kOpen) continue;
-    if (row.standing == Standing::kHeld && row.held_loss - drop > lacking) {
-      lacking = row.held_loss - drop;
+    if (row.standing == Standing::kHeld && held_loss_[row.terminal] - drop > lacking) {
+      lacking = held_loss_[row.terminal] - drop;
       lacking_edge = e;
     }
     edge_loss_[e] = drop;
     if (loops_.inTree(e)) continue;
-    if (row.standing == Standing::kHeld) edge_loss_[e] = row.held_loss;
+    if (row.standing == Standing::kHeld) edge_loss_[e] = held_loss_[row.terminal];
     hold_[e] = row.standing == Standing::kHeld ? Hold::kAlong : Hold::kShut;
   }
   LoopSum sum = loops_.largestSum(edge_loss_, hold_);

@@ -25,14 +25,18 @@ Newton::Newton(const Network& network, Tolerance tolerance)
       loops_(network, treeRanks(network, laws_)),
       system_(network),
       rows_(network.edges.size()),
+      held_loss_(network.terminals.size(), 0.0),
+      limit_(network.terminals.size(), 0.0),
       by_speed_(network.edges.size(), 0.0),
       pressure_(system_.size() + 1, 0.0),
+      right_(system_.size() + 1, 0.0),
       change_(system_.size() + 1, 0.0),
       by_border_(system_.size() + 1, 0.0),
       draw_(system_.size() + 1, 0.0) {
   for (int e = 0; e < static_cast<int>(rows_.size()); ++e) {
     rows_[e].from = system_.step(network.edges[e].from);
     rows_[e].to = system_.step(network.edges[e].to);
+    rows_[e].terminal = laws_.terminal(e);
     if (laws_.hasPump(e)) pump_edges_.push_back(e);
   }
   for (const Draw& draw : network.draws) {
@@ -84,11 +88,11 @@ double Newton::freeFlow(int e, double pressure_pa) {
 
 void Newton::setFlow(int e, double flow, bool held) {
   Row& row = rows_[e];
-  row.limit = laws_.limit(e);
+  if (row.terminal >= 0) limit_[row.terminal] = laws_.limit(e);
   if (laws_.shut(e)) {
     row.standing = Standing::kShut;
     row.flow = row.surplus = row.conductance = 0;
-  } else if (held || flow > row.limit) {
+  } else if (held || flow > laws_.limit(e)) {
     holdEdge(e);
   } else {
     openEdge(e, flow);
@@ -173,7 +177,7 @@ void Newton::leave(const Request& request, State& state) {
   state.throttled.assign(network_.terminals.size(), 0);
   for (std::size_t t = 0; t < network_.terminals.size(); ++t) {
     const int e = laws_.edgeOfTerminal(static_cast<int>(t));
-    if (e >= 0 && std::isfinite(rows_[e].limit)) state.throttled[t] = rows_[e].standing != Standing::kOpen;
+    if (e >= 0 && std::isfinite(limit_[t])) state.throttled[t] = rows_[e].standing != Standing::kOpen;
   }
   state.warm = summary_.ended == Ended::kConverged;
 }

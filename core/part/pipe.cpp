@@ -25,9 +25,7 @@ PipeConstants pipeConstants(double length_m, double bore_m, double roughness_m, 
   pipe.rough = roughness_m / bore_m / kRoughnessDivisor;
   pipe.friction = length_m / bore_m * dynamic;
   pipe.quadratic = loss_k * dynamic;
-  const ValueSlope begin = turbulentBegin(pipe.rough);
-  pipe.turbulent_begin = begin.value;
-  pipe.turbulent_slope = begin.slope;
+  pipe.turbulent_begin = turbulentBegin(pipe.rough);
   return pipe;
 }
 
@@ -39,11 +37,7 @@ ValueSlope frictionFactor(double reynolds, double relative_roughness) {
     return ValueSlope{loss.value / squared, loss.slope / squared - 2 * loss.value / (squared * reynolds)};
   };
   if (reynolds < kTurbulentBegin) {
-    const ValueSlope begin = turbulentBegin(rough);
-    PipeConstants pipe;
-    pipe.turbulent_begin = begin.value;
-    pipe.turbulent_slope = begin.slope;
-    return fromLoss(frictionBlend(pipe, reynolds));
+    return fromLoss(frictionBlend(turbulentBegin(rough), reynolds));
   }
   FrictionMemory memory;
   const ColebrookRoot c = colebrookRoot(rough, kSmoothConstant / reynolds, memory);
