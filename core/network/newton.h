@@ -58,6 +58,7 @@ class Newton {
   void start(const Request& request, const State& state);
   void coldStart();
   void warmStart(const State& state);
+  bool isOwn(const State& state) const;
   double freeFlow(int edge, double pressure_pa);
   void setFlow(int edge, double flow, bool held);
   void leave(const Request& request, State& state);
@@ -97,6 +98,7 @@ class Newton {
   std::vector<TapResponse> responses_;
   std::vector<TapTerm> terms_;
   double speed_squared_ = 1;
+  double row_speed_squared_ = -1;  // that of the state last left
   double speed_change_ = 0;
   double least_slope_ = 0;
   double worst_surplus_ = 0;  // largest |surplus| of an open edge

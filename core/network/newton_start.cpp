@@ -122,9 +122,21 @@ void Newton::coldStart() {
   }
 }
 
+/// True if the rows still hold this very state, as they do when solve follows solve.
+bool Newton::isOwn(const State& state) const {
+  constexpr double kRounding = 1e-14;  // of a square root and its square
+  if (std::abs(speed_squared_ - row_speed_squared_) > kRounding * speed_squared_) return false;
+  for (int node = 0; node < network_.num_nodes; ++node)
+    if (pressure_[system_.step(node)] != state.node_pressure_pa[node]) return false;
+  for (std::size_t e = 0; e < rows_.size(); ++e)
+    if (rows_[e].flow != state.edge_flow_m3s[e]) return false;
+  return true;
+}
+
 /// The flows of the state before; where a valve has moved they are rescaled by √(K_old/K_new), K_old being what the
 /// old pressures and flows show.
 void Newton::warmStart(const State& state) {
+  const bool own = isOwn(state);
   for (int node = 0; node < network_.num_nodes; ++node) pressure_[system_.step(node)] = state.node_pressure_pa[node];
   const double ratio = speed_squared_ / (state.speed * state.speed);
   if (ratio != 1)
@@ -133,8 +145,9 @@ void Newton::warmStart(const State& state) {
   for (double& pressure : pressure_) pressure -= level;
   const double by_speed = std::sqrt(ratio);
   for (int e = 0; e < static_cast<int>(rows_.size()); ++e) {
-    double flow = by_speed * state.edge_flow_m3s[e];
     const int terminal = laws_.terminal(e);
+    if (own && terminal < 0 && !laws_.hasPump(e)) continue;
+    const double flow = by_speed * state.edge_flow_m3s[e];
     const bool held = terminal >= 0 && state.throttled[terminal] != 0 && std::isfinite(laws_.limit(e));
     setFlow(e, flow, held);
     if (terminal < 0 || rows_[e].standing != Standing::kOpen) continue;
@@ -180,6 +193,7 @@ void Newton::leave(const Request& request, State& state) {
     if (e >= 0 && std::isfinite(limit_[t])) state.throttled[t] = rows_[e].standing != Standing::kOpen;
   }
   state.warm = summary_.ended == Ended::kConverged;
+  row_speed_squared_ = speed_squared_;
 }
 
 Summary Newton::solve(const Request& request, State& state, const std::stop_token& stop) {

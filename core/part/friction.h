@@ -32,15 +32,23 @@ struct FrictionMemory {
   double log_at = 0;  ///< … and its natural logarithm.
 };
 
-/// Natural logarithm of y > 0, from the remembered one by ln(y/y0) = 2 artanh((y − y0)/(y + y0)) when near.
-inline double logNear(double y, FrictionMemory& memory) {
-  const double s = (y - memory.at) / (y + memory.at);
+/// Natural logarithm of y > 0 and 1/y, the logarithm from the remembered one by
+/// ln(y/y0) = 2 artanh((y − y0)/(y + y0)) when near. One division serves both.
+struct LogAndInverse {
+  double log = 0;
+  double inverse = 0;
+};
+inline LogAndInverse logNear(double y, FrictionMemory& memory) {
+  const double sum = y + memory.at;
+  const double both = 1 / (y * sum);
+  const double inverse = both * sum;
+  const double s = (y - memory.at) * both * y;
   const double s2 = s * s;
   if (s2 < 0.0036)  // next term 2 s^11/11 < 7e-15
-    return memory.log_at + 2 * s * (1 + s2 * (1.0 / 3 + s2 * (1.0 / 5 + s2 * (1.0 / 7 + s2 * (1.0 / 9)))));
+    return {memory.log_at + 2 * s * (1 + s2 * (1.0 / 3 + s2 * (1.0 / 5 + s2 * (1.0 / 7 + s2 * (1.0 / 9))))), inverse};
   memory.at = y;
   memory.log_at = std::log(y);
-  return memory.log_at;
+  return {memory.log_at, inverse};
 }
 
 /// 1/√f of Colebrook, and what slopes need: `steepness` = 1/(1 + (2/ln 10) b/(a + b x)), which makes
@@ -64,9 +72,10 @@ inline ColebrookRoot colebrookRoot(double a, double b, FrictionMemory& memory) {
   double steepness = 1;
   for (int i = 0; i < 40; ++i) {
     const double y = a + b * x;
-    const double share = kTwoOverLn10 * b / y;
+    const LogAndInverse near = logNear(y, memory);
+    const double share = kTwoOverLn10 * b * near.inverse;
     steepness = 1 / (1 + share);
-    const double newton = -(x + kTwoOverLn10 * logNear(y, memory)) * steepness;
+    const double newton = -(x + kTwoOverLn10 * near.log) * steepness;
     const double bend = share * share * steepness / kTwoOverLn10;
     double change = newton * (1 + 0.5 * newton * bend);
     if (!(x + change > 0)) change = -0.5 * x;
