@@ -13,8 +13,8 @@ namespace ebbline::canvas {
 struct LoopCanvas::Cache {
   std::unique_ptr<Topology> topology;  ///< Null: the loop changed.
   Geometry geometry;
-  bool geometryValid = false;          ///< False: scale, theme or options changed.
-  std::optional<HitTest> hits;         ///< Made when the pointer first asks.
+  bool geometryValid = false;   ///< False: scale, theme or options changed.
+  std::optional<HitTest> hits;  ///< Made when the pointer first asks.
   Dresser dresser;
   const Dressing* dressing = nullptr;  ///< Null: results, colours, selection changed.
   std::vector<Label> labels;

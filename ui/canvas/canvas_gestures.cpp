@@ -13,9 +13,9 @@
 namespace ebbline::canvas {
 namespace {
 
-constexpr double kKeyStep = 48;       // px an arrow key pans
-constexpr double kZoomStep = 1.25;    // factor of + and −
-constexpr double kDragStart = 4;      // px before a press becomes a pan
+constexpr double kKeyStep = 48;     // px an arrow key pans
+constexpr double kZoomStep = 1.25;  // factor of + and −
+constexpr double kDragStart = 4;    // px before a press becomes a pan
 
 }  // namespace
 
@@ -79,17 +79,22 @@ void LoopCanvas::mouseReleaseEvent(QMouseEvent*) {
 
 void LoopCanvas::mouseDoubleClickEvent(QMouseEvent* event) {
   if (event->button() != Qt::LeftButton) return;
-  if (const loop::Id id = hit(event->position())) emit activated(id);
-  else fit();
+  if (const loop::Id id = hit(event->position()))
+    emit activated(id);
+  else
+    fit();
 }
 
 void LoopCanvas::wheelEvent(QWheelEvent* event) {
   event->accept();
   // A touchpad tells px and scrolls the sheet; a wheel (or a touchpad with Ctrl) zooms where the pointer is.
   const bool touchpad = !event->pixelDelta().isNull() && !(event->modifiers() & Qt::ControlModifier);
-  if (touchpad) panBy(event->pixelDelta());
-  else if (event->modifiers() & Qt::ShiftModifier) panBy({event->angleDelta().y() / 120.0 * kKeyStep, 0});
-  else zoomBy(std::pow(1.0015, event->angleDelta().y()), event->position());
+  if (touchpad)
+    panBy(event->pixelDelta());
+  else if (event->modifiers() & Qt::ShiftModifier)
+    panBy({event->angleDelta().y() / 120.0 * kKeyStep, 0});
+  else
+    zoomBy(std::pow(1.0015, event->angleDelta().y()), event->position());
   hovered_ = 0;
 }
 
@@ -98,15 +103,31 @@ void LoopCanvas::keyPressEvent(QKeyEvent* event) {
   const QPointF middle = QRectF(rect()).center();
   switch (event->key()) {
     case Qt::Key_Plus:
-    case Qt::Key_Equal: zoomBy(kZoomStep, middle); return;
-    case Qt::Key_Minus: zoomBy(1 / kZoomStep, middle); return;
+    case Qt::Key_Equal:
+      zoomBy(kZoomStep, middle);
+      return;
+    case Qt::Key_Minus:
+      zoomBy(1 / kZoomStep, middle);
+      return;
     case Qt::Key_0:
-    case Qt::Key_Home: fit(); return;
-    case Qt::Key_Left: panBy({kKeyStep, 0}); return;
-    case Qt::Key_Right: panBy({-kKeyStep, 0}); return;
-    case Qt::Key_Up: panBy({0, kKeyStep}); return;
-    case Qt::Key_Down: panBy({0, -kKeyStep}); return;
-    case Qt::Key_Escape: choose(0); return;
+    case Qt::Key_Home:
+      fit();
+      return;
+    case Qt::Key_Left:
+      panBy({kKeyStep, 0});
+      return;
+    case Qt::Key_Right:
+      panBy({-kKeyStep, 0});
+      return;
+    case Qt::Key_Up:
+      panBy({0, kKeyStep});
+      return;
+    case Qt::Key_Down:
+      panBy({0, -kKeyStep});
+      return;
+    case Qt::Key_Escape:
+      choose(0);
+      return;
     case Qt::Key_Return:
     case Qt::Key_Enter:
       if (selected_ != 0) emit activated(selected_);
@@ -117,7 +138,8 @@ void LoopCanvas::keyPressEvent(QKeyEvent* event) {
         setCursor(Qt::OpenHandCursor);
       }
       return;
-    default: QWidget::keyPressEvent(event);
+    default:
+      QWidget::keyPressEvent(event);
   }
 }
 
@@ -151,8 +173,8 @@ void LoopCanvas::focusOutEvent(QFocusEvent* event) {
 bool LoopCanvas::focusNextPrevChild(bool next) {
   const auto& terminals = loop_.terminals;
   if (!hasFocus() || terminals.empty()) return QWidget::focusNextPrevChild(next);
-  const auto found = std::find_if(terminals.begin(), terminals.end(),
-                                  [this](const loop::Terminal& t) { return t.id == selected_; });
+  const auto found =
+      std::find_if(terminals.begin(), terminals.end(), [this](const loop::Terminal& t) { return t.id == selected_; });
   const auto size = static_cast<std::ptrdiff_t>(terminals.size());
   std::ptrdiff_t index = found - terminals.begin();
   if (found == terminals.end()) index = next ? -1 : size;

@@ -8,9 +8,9 @@
 namespace ebbline::canvas {
 namespace {
 
-constexpr double kCell = 64;       // px; a few times the usual length of a piece
-constexpr double kJoined = 3;      // px; lines that meet within this of an end are joined, not crossed
-constexpr double kHalfGap = 5.5;   // px; with the square ends of the pieces about 8 px of ground remain
+constexpr double kCell = 64;      // px; a few times the usual length of a piece
+constexpr double kJoined = 3;     // px; lines that meet within this of an end are joined, not crossed
+constexpr double kHalfGap = 5.5;  // px; with the square ends of the pieces about 8 px of ground remain
 constexpr double kHalfGapLeg = 4;
 
 /// One straight stretch of a line, before cutting.
@@ -26,7 +26,9 @@ struct Gap {
   double from = 0, to = 0;
 };
 
-double length(QPointF v) { return std::hypot(v.x(), v.y()); }
+double length(QPointF v) {
+  return std::hypot(v.x(), v.y());
+}
 
 std::vector<Stretch> stretchesOf(const std::vector<Line>& lines) {
   std::vector<Stretch> out;
@@ -134,7 +136,8 @@ std::vector<Piece> cutAtCrossings(const std::vector<Line>& lines, double gap) {
     double from = 0;
     const int strand = lines[static_cast<size_t>(s.line)].strand;
     for (; next < gaps.size() && gaps[next].stretch == static_cast<int>(i); ++next) {
-      if (gaps[next].from > from) out.push_back({s.a + unit * from, s.a + unit * gaps[next].from, strand, s.along + from});
+      if (gaps[next].from > from)
+        out.push_back({s.a + unit * from, s.a + unit * gaps[next].from, strand, s.along + from});
       from = std::max(from, gaps[next].to);
     }
     if (from < whole) out.push_back({s.a + unit * from, s.b, strand, s.along + from});

@@ -16,7 +16,9 @@ std::uint64_t keyOf(loop::Id id, loop::Side side) {
   return (static_cast<std::uint64_t>(id) << 2) | static_cast<std::uint64_t>(side);
 }
 
-QRgb rgb(const QColor& colour) { return colour.rgba(); }
+QRgb rgb(const QColor& colour) {
+  return colour.rgba();
+}
 
 constexpr double kNoFlow = 1e-7;  // of design flow: below this a run is drawn as one without flow
 
@@ -60,9 +62,10 @@ bool Dresser::matches(const Geometry& geometry, const network::Results& results)
   for (size_t i = 0; i < found_.size(); ++i) {
     const Found& f = found_[i];
     const Strand& strand = geometry.strands[i];
-    if (f.part >= 0 && (f.part >= static_cast<int>(results.parts.size()) ||
-                        results.parts[static_cast<size_t>(f.part)].id != strand.id ||
-                        (strand.kind == PartKind::kPairedRun && results.parts[static_cast<size_t>(f.part)].side != strand.side)))
+    if (f.part >= 0 &&
+        (f.part >= static_cast<int>(results.parts.size()) ||
+         results.parts[static_cast<size_t>(f.part)].id != strand.id ||
+         (strand.kind == PartKind::kPairedRun && results.parts[static_cast<size_t>(f.part)].side != strand.side)))
       return false;
     if (f.from >= static_cast<int>(results.ends.size()) || f.to >= static_cast<int>(results.ends.size())) return false;
     if (f.from >= 0 && !(results.ends[static_cast<size_t>(f.from)].end == strand.from)) return false;
@@ -156,7 +159,8 @@ void Dresser::dressTerminals(const LoopPicture& picture) {
     }
     const network::TerminalResult& r = results[at];
     const bool idle = std::abs(r.delivered_m3s) <= kNoFlow * out_.designFlow_m3s;
-    out_.terminals[i] = {true, idle && !r.under_supplied, r.under_supplied, std::clamp(r.stroke, 0.0, 1.0), r.shortfall};
+    out_.terminals[i] = {true, idle && !r.under_supplied, r.under_supplied, std::clamp(r.stroke, 0.0, 1.0),
+                         r.shortfall};
   }
 }
 
@@ -168,8 +172,9 @@ void Dresser::collectPens(const Geometry& geometry) {
     StrandLook& look = out_.strands[i];
     const Strand& strand = geometry.strands[i];
     const int eighths = static_cast<int>(std::lround(look.width * 8));
-    const auto [found, fresh] = known.emplace(std::tuple{strand.isReturn, strand.leg, look.outlined, eighths, look.colour},
-                                              static_cast<int>(out_.pens.size()));
+    const auto [found, fresh] =
+        known.emplace(std::tuple{strand.isReturn, strand.leg, look.outlined, eighths, look.colour},
+                      static_cast<int>(out_.pens.size()));
     if (fresh) out_.pens.push_back({eighths / 8.0, look.colour, strand.isReturn, strand.leg, look.outlined});
     look.pen = found->second;
   }
@@ -188,15 +193,18 @@ const Dressing& Dresser::dress(const Geometry& geometry, const Topology& topolog
   for (size_t i = 0; i < geometry.strands.size(); ++i) {
     const Strand& strand = geometry.strands[i];
     StrandLook& look = out_.strands[i];
-    look = {(strand.leg ? 1.5 : 2) * theme.strokeFactor, pipe, false, false, strand.id == picture.selected && strand.id != 0};
+    look = {(strand.leg ? 1.5 : 2) * theme.strokeFactor, pipe, false, false,
+            strand.id == picture.selected && strand.id != 0};
     if (picture.results) {
       const double flow = flowOf(i, *picture.results);
       look.idle = std::abs(flow) <= kNoFlow * out_.designFlow_m3s;
-      look.width = theme.strokeFactor * (look.idle ? theme.stroke.pipeMin : weightOf(flow, out_.designFlow_m3s, theme.stroke));
+      look.width =
+          theme.strokeFactor * (look.idle ? theme.stroke.pipeMin : weightOf(flow, out_.designFlow_m3s, theme.stroke));
       if (look.idle) look.colour = idle;
       double value = 0;
       if (coloured && out_.scale.valid && !look.idle && valueOf(i, picture, value)) {
-        look.colour = rgb(shade(theme, picture.colourBy, (value - out_.scale.low) / (out_.scale.high - out_.scale.low)));
+        look.colour =
+            rgb(shade(theme, picture.colourBy, (value - out_.scale.low) / (out_.scale.high - out_.scale.low)));
         look.outlined = true;
         look.width = std::max(look.width, strand.leg ? 2.0 : 2.5);
       }

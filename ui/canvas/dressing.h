@@ -16,7 +16,7 @@ struct StrandLook {
   bool idle = false;      ///< Solved, and nothing flows.
   bool outlined = false;  ///< Carries a scale colour, so it needs its outline.
   bool selected = false;
-  int pen = 0;            ///< Index in Dressing::pens.
+  int pen = 0;  ///< Index in Dressing::pens.
 };
 
 /// Lines of one look are painted together.
@@ -33,7 +33,7 @@ struct TerminalLook {
   bool known = false;
   bool idle = false;
   bool under = false;
-  double stroke = 0;     ///< 0…1.
+  double stroke = 0;  ///< 0…1.
   double shortfall = 0;
 };
 
@@ -47,7 +47,7 @@ struct Scale {
 
 struct Dressing {
   std::vector<StrandLook> strands;
-  std::vector<LinePen> pens;             ///< Back to front.
+  std::vector<LinePen> pens;            ///< Back to front.
   std::vector<TerminalLook> terminals;  ///< Order of Loop::terminals.
   Scale scale;
   bool solved = false;

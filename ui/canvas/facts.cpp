@@ -11,7 +11,9 @@ namespace {
 
 using quantity::Quantity;
 
-QString words(const char* text) { return QCoreApplication::translate("LoopCanvas", text); }
+QString words(const char* text) {
+  return QCoreApplication::translate("LoopCanvas", text);
+}
 
 class Teller {
  public:
@@ -23,15 +25,33 @@ class Teller {
     const loop::Loop& loop = *picture_.loop;
     const auto i = static_cast<size_t>(part->index);
     switch (part->kind) {
-      case PartKind::kPairedRun: pairedRun(loop.paired_runs[i]); break;
-      case PartKind::kPipeRun: pipeRun(loop.pipe_runs[i]); break;
-      case PartKind::kTerminal: terminal(loop.terminals[i]); break;
-      case PartKind::kPlant: plant(loop.plants[i]); break;
-      case PartKind::kPump: pump(loop.pumps[i]); break;
-      case PartKind::kValve: valve(loop.valves[i]); break;
-      case PartKind::kSensor: sensor(loop.sensors[i]); break;
-      case PartKind::kVessel: vessel(loop.vessels[i]); break;
-      case PartKind::kNote: facts_.title = QString::fromStdString(loop.notes[i].text); break;
+      case PartKind::kPairedRun:
+        pairedRun(loop.paired_runs[i]);
+        break;
+      case PartKind::kPipeRun:
+        pipeRun(loop.pipe_runs[i]);
+        break;
+      case PartKind::kTerminal:
+        terminal(loop.terminals[i]);
+        break;
+      case PartKind::kPlant:
+        plant(loop.plants[i]);
+        break;
+      case PartKind::kPump:
+        pump(loop.pumps[i]);
+        break;
+      case PartKind::kValve:
+        valve(loop.valves[i]);
+        break;
+      case PartKind::kSensor:
+        sensor(loop.sensors[i]);
+        break;
+      case PartKind::kVessel:
+        vessel(loop.vessels[i]);
+        break;
+      case PartKind::kNote:
+        facts_.title = QString::fromStdString(loop.notes[i].text);
+        break;
     }
     return std::move(facts_);
   }
@@ -40,7 +60,9 @@ class Teller {
   QString with(double base, Quantity of) const {
     return QString::fromStdString(quantity::formatWithUnit(base, of, picture_.units));
   }
-  void add(const char* name, const QString& value, bool under = false) { facts_.lines.push_back({words(name), value, under}); }
+  void add(const char* name, const QString& value, bool under = false) {
+    facts_.lines.push_back({words(name), value, under});
+  }
   void title(const std::string& tag, const char* kind) {
     facts_.title = tag.empty() ? words(kind) : words(kind) + " " + QString::fromStdString(tag);
   }
@@ -87,7 +109,8 @@ class Teller {
     flowFacts(result(run.id, loop::Side::kSupply));
     const network::EndResult *high = end({run.to, loop::Side::kSupply}), *low = end({run.to, loop::Side::kReturn});
     if (high && low && high->determined && low->determined)
-      add(QT_TRANSLATE_NOOP("LoopCanvas", "pressure across its end"), with(high->pressure_pa - low->pressure_pa, Quantity::kPressure));
+      add(QT_TRANSLATE_NOOP("LoopCanvas", "pressure across its end"),
+          with(high->pressure_pa - low->pressure_pa, Quantity::kPressure));
     noResult();
   }
 
@@ -107,11 +130,13 @@ class Teller {
       for (const network::TerminalResult& r : picture_.results->terminals)
         if (r.id == t.id) found = &r;
     if (!found) {
-      add(QT_TRANSLATE_NOOP("LoopCanvas", "design flow"), with(quantity::fileToBase(t.design_flow_l_s, Quantity::kFlow), Quantity::kFlow));
+      add(QT_TRANSLATE_NOOP("LoopCanvas", "design flow"),
+          with(quantity::fileToBase(t.design_flow_l_s, Quantity::kFlow), Quantity::kFlow));
       return;
     }
     const QString short_ = found->under_supplied ? "  (" + shortfallText(found->shortfall) + ")" : QString();
-    add(QT_TRANSLATE_NOOP("LoopCanvas", "delivered"), with(found->delivered_m3s, Quantity::kFlow) + short_, found->under_supplied);
+    add(QT_TRANSLATE_NOOP("LoopCanvas", "delivered"), with(found->delivered_m3s, Quantity::kFlow) + short_,
+        found->under_supplied);
     add(QT_TRANSLATE_NOOP("LoopCanvas", "requested"), with(found->requested_m3s, Quantity::kFlow));
     add(QT_TRANSLATE_NOOP("LoopCanvas", "pressure across it"), with(found->available_pa, Quantity::kPressure));
     add(QT_TRANSLATE_NOOP("LoopCanvas", "valve open"), theme::numberText(100 * found->stroke, 0) + QChar(0xa0) + "%");
@@ -124,7 +149,8 @@ class Teller {
     title(p.tag, kind);
     partFacts(p.id);
     if (p.minimum_flow_l_s)
-      add(QT_TRANSLATE_NOOP("LoopCanvas", "minimum flow"), with(quantity::fileToBase(*p.minimum_flow_l_s, Quantity::kFlow), Quantity::kFlow));
+      add(QT_TRANSLATE_NOOP("LoopCanvas", "minimum flow"),
+          with(quantity::fileToBase(*p.minimum_flow_l_s, Quantity::kFlow), Quantity::kFlow));
     noResult();
   }
 
@@ -142,7 +168,8 @@ class Teller {
         add(QT_TRANSLATE_NOOP("LoopCanvas", "flow"), with(r.flow_m3s, Quantity::kFlow));
         add(QT_TRANSLATE_NOOP("LoopCanvas", "head"), with(r.pressure_pa, Quantity::kPressure));
         add(QT_TRANSLATE_NOOP("LoopCanvas", "speed"), theme::numberText(100 * r.speed, 0) + QChar(0xa0) + "%");
-        if (r.shaft_power_w > 0) add(QT_TRANSLATE_NOOP("LoopCanvas", "shaft power"), with(r.shaft_power_w, Quantity::kPower));
+        if (r.shaft_power_w > 0)
+          add(QT_TRANSLATE_NOOP("LoopCanvas", "shaft power"), with(r.shaft_power_w, Quantity::kPower));
       }
     noResult();
   }
@@ -157,14 +184,17 @@ class Teller {
     title(s.tag, QT_TRANSLATE_NOOP("LoopCanvas", "sensor"));
     const network::EndResult *high = end(s.high), *low = end(s.low);
     if (high && low && high->gauge_pa && low->gauge_pa && high->determined && low->determined)
-      add(QT_TRANSLATE_NOOP("LoopCanvas", "reads about"), with(high->pressure_pa - low->pressure_pa, Quantity::kPressure));
+      add(QT_TRANSLATE_NOOP("LoopCanvas", "reads about"),
+          with(high->pressure_pa - low->pressure_pa, Quantity::kPressure));
     if (s.set_point_kpa)
-      add(QT_TRANSLATE_NOOP("LoopCanvas", "set-point"), with(quantity::fileToBase(*s.set_point_kpa, Quantity::kPressure), Quantity::kPressure));
+      add(QT_TRANSLATE_NOOP("LoopCanvas", "set-point"),
+          with(quantity::fileToBase(*s.set_point_kpa, Quantity::kPressure), Quantity::kPressure));
   }
 
   void vessel(const loop::Vessel& v) {
     title(v.tag, QT_TRANSLATE_NOOP("LoopCanvas", "vessel"));
-    add(QT_TRANSLATE_NOOP("LoopCanvas", "gauge pressure"), with(quantity::fileToBase(v.fill_kpa, Quantity::kPressure), Quantity::kPressure));
+    add(QT_TRANSLATE_NOOP("LoopCanvas", "gauge pressure"),
+        with(quantity::fileToBase(v.fill_kpa, Quantity::kPressure), Quantity::kPressure));
   }
 
   void noResult() {
@@ -185,6 +215,8 @@ QString Facts::sentence() const {
   return parts.isEmpty() ? title : title + ": " + parts.join(", ");
 }
 
-Facts factsOf(loop::Id id, const Topology& topology, const LoopPicture& picture) { return Teller(topology, picture).tell(id); }
+Facts factsOf(loop::Id id, const Topology& topology, const LoopPicture& picture) {
+  return Teller(topology, picture).tell(id);
+}
 
 }  // namespace ebbline::canvas

@@ -16,9 +16,9 @@ struct Strand {
   loop::Id id = 0;
   loop::Side side = loop::Side::kSingle;  ///< Paired runs: which pipe.
   PartKind kind = PartKind::kPipeRun;
-  loop::End from, to;   ///< Ends whose pressure it has; equal for a leg.
+  loop::End from, to;  ///< Ends whose pressure it has; equal for a leg.
   bool isReturn = false;
-  bool leg = false;     ///< Short connection of a symbol: never heavier than half the scale of weights.
+  bool leg = false;  ///< Short connection of a symbol: never heavier than half the scale of weights.
 };
 
 /// A straight piece of a line as drawn, overpass gaps already cut out.
@@ -55,7 +55,7 @@ struct Tap {
 };
 
 struct Geometry {
-  double scale = 1;        ///< px per metre.
+  double scale = 1;  ///< px per metre.
   double symbolScale = 1;
   std::vector<Strand> strands;
   std::vector<Piece> pieces;
@@ -63,14 +63,14 @@ struct Geometry {
   std::vector<Mark> marks;
   std::vector<Tap> taps;
   std::vector<QPointF> openEnds;
-  QRectF bounds;           ///< Of everything but text.
+  QRectF bounds;  ///< Of everything but text.
 };
 
 struct GeometryOptions {
-  double pairGap = 9;          ///< px between the centres of a pair.
+  double pairGap = 9;  ///< px between the centres of a pair.
   double largestSymbol = 1;
-  bool snap = true;            ///< Put lines on half pixels, for the screen.
-  bool cut = true;             ///< Draw crossings as overpasses; not needed where only the size is asked for.
+  bool snap = true;  ///< Put lines on half pixels, for the screen.
+  bool cut = true;   ///< Draw crossings as overpasses; not needed where only the size is asked for.
 };
 
 Geometry makeGeometry(const loop::Loop& loop, const Topology& topology, double scale, const GeometryOptions& options);

@@ -19,19 +19,26 @@ QRectF around(QPointF centre, double halfWidth, double halfHeight) {
 
 Symbol symbolOf(loop::ValveKind kind) {
   switch (kind) {
-    case loop::ValveKind::kIsolating: return Symbol::kIsolatingValve;
-    case loop::ValveKind::kBalancing: return Symbol::kBalancingValve;
-    case loop::ValveKind::kControl: return Symbol::kControlValve;
-    case loop::ValveKind::kStrainer: return Symbol::kStrainer;
+    case loop::ValveKind::kIsolating:
+      return Symbol::kIsolatingValve;
+    case loop::ValveKind::kBalancing:
+      return Symbol::kBalancingValve;
+    case loop::ValveKind::kControl:
+      return Symbol::kControlValve;
+    case loop::ValveKind::kStrainer:
+      return Symbol::kStrainer;
   }
   return Symbol::kIsolatingValve;
 }
 
 Symbol symbolOf(loop::PlantKind kind) {
   switch (kind) {
-    case loop::PlantKind::kChiller: return Symbol::kChiller;
-    case loop::PlantKind::kBoiler: return Symbol::kBoiler;
-    case loop::PlantKind::kHeatExchanger: return Symbol::kHeatExchanger;
+    case loop::PlantKind::kChiller:
+      return Symbol::kChiller;
+    case loop::PlantKind::kBoiler:
+      return Symbol::kBoiler;
+    case loop::PlantKind::kHeatExchanger:
+      return Symbol::kHeatExchanger;
   }
   return Symbol::kHeatExchanger;
 }
@@ -48,8 +55,8 @@ void GeometryBuilder::terminalLeg(const loop::Terminal& terminal, const Mark& ma
   if (!topology_.joint(end.joint)) return;
   const QPointF start = pointOf(end), centre = mark.centre;
   const double half = 11 * mark.scale, x = centre.x() + offset;
-  const int strand = addStrand({terminal.id, end == terminal.from ? Side::kSupply : Side::kReturn, PartKind::kTerminal, end,
-                            end, topology_.isReturn(end) || end == terminal.to, true});
+  const int strand = addStrand({terminal.id, end == terminal.from ? Side::kSupply : Side::kReturn, PartKind::kTerminal,
+                                end, end, topology_.isReturn(end) || end == terminal.to, true});
   if (std::abs(start.y() - centre.y()) < half) {  // beside it: straight into its flank
     const double edge = start.x() < centre.x() ? centre.x() - half : centre.x() + half;
     addLine({start, {edge, start.y()}}, strand);
@@ -61,7 +68,8 @@ void GeometryBuilder::terminalLeg(const loop::Terminal& terminal, const Mark& ma
   const double away = x - start.x();
   const bool onMain = std::abs(away) < 3 * options_.pairGap + 1 && mainPasses(end, away > 0 ? 1 : -1);
   if (std::abs(away) > kNear && !onMain) line.insert(line.begin(), start);
-  if (!onMain && topology_.connections(end) >= 3) out_.dots.push_back({start, 2.1 * std::min(1.0, mark.scale + 0.15), strand});
+  if (!onMain && topology_.connections(end) >= 3)
+    out_.dots.push_back({start, 2.1 * std::min(1.0, mark.scale + 0.15), strand});
   if (onMain && std::abs(away) > kNear) out_.dots.push_back({top, 2.1 * std::min(1.0, mark.scale + 0.15), strand});
   addLine(std::move(line), strand);
 }
@@ -70,8 +78,16 @@ void GeometryBuilder::layTerminals() {
   const double s = out_.symbolScale;
   for (size_t i = 0; i < loop_.terminals.size(); ++i) {
     const loop::Terminal& terminal = loop_.terminals[i];
-    Mark mark{{PartKind::kTerminal, static_cast<int>(i)}, terminal.id, Symbol::kTerminal, px(terminal.at), s, 0, 26, false,
-              {}, -1};
+    Mark mark{{PartKind::kTerminal, static_cast<int>(i)},
+              terminal.id,
+              Symbol::kTerminal,
+              px(terminal.at),
+              s,
+              0,
+              26,
+              false,
+              {},
+              -1};
     mark.above = mark.centre.y() < pointOf(terminal.from).y() - 11 * s;
     mark.box = around(mark.centre, 11 * s, 11 * s);
     terminalLeg(terminal, mark, terminal.from, -6 * s);
@@ -85,7 +101,8 @@ void GeometryBuilder::plantLeg(const loop::Plant& plant, const End& end, QPointF
   if (!topology_.joint(end.joint)) return;
   const QPointF start = pointOf(end);
   const bool back = end == plant.from;
-  const int strand = addStrand({plant.id, back ? Side::kReturn : Side::kSupply, PartKind::kPlant, end, end, back, false});
+  const int strand =
+      addStrand({plant.id, back ? Side::kReturn : Side::kSupply, PartKind::kPlant, end, end, back, false});
   std::vector<QPointF> line{start, port};
   if (std::abs(start.y() - port.y()) > kNear) {
     const double x = port.x() + outward * (back ? 10 : 18) * out_.symbolScale;
@@ -106,8 +123,16 @@ void GeometryBuilder::layPlants() {
     const double half = fits ? apart : 26 * s;
     if (fits) centre.setY((in.y() + out.y()) / 2);
     const bool fromLeft = (in.x() + out.x()) / 2 <= centre.x();
-    Mark mark{{PartKind::kPlant, static_cast<int>(i)}, plant.id, symbolOf(plant.kind), centre, s, fromLeft ? 0 : 2,
-              half / s, false, {}, -1};
+    Mark mark{{PartKind::kPlant, static_cast<int>(i)},
+              plant.id,
+              symbolOf(plant.kind),
+              centre,
+              s,
+              fromLeft ? 0 : 2,
+              half / s,
+              false,
+              {},
+              -1};
     mark.box = around(centre, 34 * s, half + 12 * s);
     const double edge = centre.x() + (fromLeft ? -34 : 34) * s, outward = fromLeft ? -1 : 1;
     const bool supplyOnTop = out.y() <= in.y();
@@ -169,7 +194,8 @@ QPointF GeometryBuilder::tapCorner(const End& end, QPointF to) const {
   const QPointF from = pointOf(end), step = to - from;
   const std::vector<QPointF> taken = waysTakenAt(end);
   const auto free = [&](QPointF way, QPointF corner) {
-    const bool open = std::none_of(taken.begin(), taken.end(), [&](QPointF d) { return d.x() * way.x() + d.y() * way.y() > 0.99; });
+    const bool open =
+        std::none_of(taken.begin(), taken.end(), [&](QPointF d) { return d.x() * way.x() + d.y() * way.y() > 0.99; });
     return open && !crossesTerminal(from, corner) && !crossesTerminal(corner, to);
   };
   const QPointF upright(from.x(), to.y()), level(to.x(), from.y());
@@ -193,8 +219,16 @@ void GeometryBuilder::layTaps() {
       out_.dots.push_back({pointOf(end), 2.5 * std::min(1.0, s + 0.2), -1});
       tap(end, centre, sensor.id);
     }
-    out_.marks.push_back({{PartKind::kSensor, static_cast<int>(i)}, sensor.id, Symbol::kSensor, centre, s, 0, 26, false,
-                          around(centre, 10 * s, 10 * s), -1});
+    out_.marks.push_back({{PartKind::kSensor, static_cast<int>(i)},
+                          sensor.id,
+                          Symbol::kSensor,
+                          centre,
+                          s,
+                          0,
+                          26,
+                          false,
+                          around(centre, 10 * s, 10 * s),
+                          -1});
   }
   for (size_t i = 0; i < loop_.vessels.size(); ++i) {
     const loop::Vessel& vessel = loop_.vessels[i];
@@ -205,13 +239,29 @@ void GeometryBuilder::layTaps() {
       tap(vessel.at_end, centre + QPointF(0, (hangs ? -22 : 22) * size), vessel.id);
       out_.dots.push_back({foot, 2.2 * std::min(1.0, s + 0.2), -1});
     }
-    out_.marks.push_back({{PartKind::kVessel, static_cast<int>(i)}, vessel.id, Symbol::kVessel, centre, size, hangs ? 2 : 0,
-                          26, false, around(centre, 9 * size, 18 * size), -1});
+    out_.marks.push_back({{PartKind::kVessel, static_cast<int>(i)},
+                          vessel.id,
+                          Symbol::kVessel,
+                          centre,
+                          size,
+                          hangs ? 2 : 0,
+                          26,
+                          false,
+                          around(centre, 9 * size, 18 * size),
+                          -1});
   }
   for (size_t i = 0; i < loop_.notes.size(); ++i) {
     const QPointF centre = px(loop_.notes[i].at);
-    out_.marks.push_back({{PartKind::kNote, static_cast<int>(i)}, loop_.notes[i].id, Symbol::kNote, centre, 0.7 * s, 0, 26,
-                          false, around(centre, 6 * s, 6 * s), -1});
+    out_.marks.push_back({{PartKind::kNote, static_cast<int>(i)},
+                          loop_.notes[i].id,
+                          Symbol::kNote,
+                          centre,
+                          0.7 * s,
+                          0,
+                          26,
+                          false,
+                          around(centre, 6 * s, 6 * s),
+                          -1});
   }
 }
 
@@ -260,7 +310,8 @@ Geometry GeometryBuilder::build() {
   markJoints();
   measure();
   // Gaps shrink with the symbols; where symbols are too small to read, crossings are too small to see.
-  out_.pieces = cutAtCrossings(lines_, !options_.cut || out_.symbolScale < 0.3 ? 0 : std::min(1.0, out_.symbolScale / 0.75));
+  out_.pieces =
+      cutAtCrossings(lines_, !options_.cut || out_.symbolScale < 0.3 ? 0 : std::min(1.0, out_.symbolScale / 0.75));
   return std::move(out_);
 }
 

@@ -11,8 +11,12 @@ using loop::Side;
 
 constexpr double kStraight = 0.5;  // px; less than this aside counts as level or upright
 
-double length(QPointF v) { return std::hypot(v.x(), v.y()); }
-double dot(QPointF a, QPointF b) { return a.x() * b.x() + a.y() * b.y(); }
+double length(QPointF v) {
+  return std::hypot(v.x(), v.y());
+}
+double dot(QPointF a, QPointF b) {
+  return a.x() * b.x() + a.y() * b.y();
+}
 
 // The side of a run on which its return lies: up and to the left.
 QPointF normalUpLeft(QPointF direction) {
@@ -75,7 +79,8 @@ std::vector<QPointF> GeometryBuilder::waysTakenAt(const End& end) const {
     if (part.kind != PartKind::kPipeRun) continue;
     const loop::PipeRun& run = loop_.pipe_runs[static_cast<size_t>(part.index)];
     const bool leaves = run.from == end;
-    const loop::Joint *other = topology_.joint(leaves ? run.to.joint : run.from.joint), *here = topology_.joint(end.joint);
+    const loop::Joint *other = topology_.joint(leaves ? run.to.joint : run.from.joint),
+                      *here = topology_.joint(end.joint);
     if ((!leaves && !(run.to == end)) || !other || !here) continue;
     const loop::Point next = run.bends.empty() ? other->at : leaves ? run.bends.front() : run.bends.back();
     const QPointF direction = px(next) - px(here->at);
@@ -110,13 +115,15 @@ GeometryBuilder::JointPoints GeometryBuilder::placeJoint(const loop::Joint& join
 void GeometryBuilder::setApart(const loop::Joint& joint, JointPoints& points) const {
   const std::vector<PartRef>& parts = topology_.at(joint.id);
   if (parts.size() != 2) return;
-  const auto terminal = std::find_if(parts.begin(), parts.end(),
-                                     [](const PartRef& p) { return p.kind == PartKind::kTerminal; });
+  const auto terminal =
+      std::find_if(parts.begin(), parts.end(), [](const PartRef& p) { return p.kind == PartKind::kTerminal; });
   const std::vector<QPointF> directions = directionsAt(joint.id);
   if (terminal == parts.end() || directions.size() != 1 || std::abs(directions.front().y()) > 0.01) return;
   const QPointF at = px(loop_.terminals[static_cast<size_t>(terminal->index)].at);
   const double legs = 6 * out_.symbolScale;
-  if (std::abs(at.x() - points.supply.x()) > 3 * options_.pairGap || std::abs(at.y() - points.supply.y()) < 12 * out_.symbolScale) return;
+  if (std::abs(at.x() - points.supply.x()) > 3 * options_.pairGap ||
+      std::abs(at.y() - points.supply.y()) < 12 * out_.symbolScale)
+    return;
   points.supply.setX(at.x() - legs);
   points.back.setX(at.x() + legs);
 }
@@ -144,7 +151,8 @@ void GeometryBuilder::layPairedRuns() {
         back[i] = centre[i] + pairShift({before / length(before), after / length(after)});
     }
     const auto strand = [&](Side side) {
-      return addStrand({run.id, side, PartKind::kPairedRun, {run.from, side}, {run.to, side}, side == Side::kReturn, false});
+      return addStrand(
+          {run.id, side, PartKind::kPairedRun, {run.from, side}, {run.to, side}, side == Side::kReturn, false});
     };
     addLine(std::move(supply), strand(Side::kSupply));
     addLine(std::move(back), strand(Side::kReturn));
@@ -162,8 +170,10 @@ std::vector<QPointF> GeometryBuilder::singleRoute(const loop::PipeRun& run) cons
   const size_t last = drawn.size() - 1;
   const auto follow = [&](size_t i, size_t neighbour) {
     const QPointF step = drawn[i] - drawn[neighbour];
-    if (std::abs(step.x()) < kStraight) moved[i].setX(moved[neighbour].x());
-    else if (std::abs(step.y()) < kStraight) moved[i].setY(moved[neighbour].y());
+    if (std::abs(step.x()) < kStraight)
+      moved[i].setX(moved[neighbour].x());
+    else if (std::abs(step.y()) < kStraight)
+      moved[i].setY(moved[neighbour].y());
   };
   for (size_t i = 1; i < last; ++i) follow(i, i - 1);
   for (size_t i = last; i-- > 1;) follow(i, i + 1);
@@ -174,7 +184,8 @@ std::vector<QPointF> GeometryBuilder::singleRoute(const loop::PipeRun& run) cons
     if (level || upright) {  // shifted across its own direction: a step half-way keeps it square
       const QPointF middle = (moved[0] + moved[1]) / 2;
       moved.insert(moved.begin() + 1, level ? QPointF(middle.x(), moved[0].y()) : QPointF(moved[0].x(), middle.y()));
-      moved.insert(moved.begin() + 2, level ? QPointF(middle.x(), moved.back().y()) : QPointF(moved.back().x(), middle.y()));
+      moved.insert(moved.begin() + 2,
+                   level ? QPointF(middle.x(), moved.back().y()) : QPointF(moved.back().x(), middle.y()));
     }
   }
   return moved;

@@ -5,14 +5,17 @@
 namespace ebbline::canvas {
 namespace {
 
-loop::Point point(QPointF at) { return {at.x(), at.y()}; }
+loop::Point point(QPointF at) {
+  return {at.x(), at.y()};
+}
 
 loop::SpatialIndex boxesOf(const Geometry& geometry) {
   std::vector<loop::Shape> shapes;
   shapes.reserve(geometry.marks.size());
   for (size_t i = 0; i < geometry.marks.size(); ++i) {
     const QRectF& box = geometry.marks[i].box;
-    shapes.push_back({static_cast<std::uint32_t>(i), loop::Shape::Kind::kBox, point(box.topLeft()), point(box.bottomRight())});
+    shapes.push_back(
+        {static_cast<std::uint32_t>(i), loop::Shape::Kind::kBox, point(box.topLeft()), point(box.bottomRight())});
   }
   return loop::SpatialIndex(std::move(shapes));
 }
@@ -20,10 +23,11 @@ loop::SpatialIndex boxesOf(const Geometry& geometry) {
 loop::SpatialIndex linesOf(const Geometry& geometry) {
   std::vector<loop::Shape> shapes;
   shapes.reserve(geometry.taps.size() + geometry.pieces.size());
-  for (const Tap& tap : geometry.taps) shapes.push_back({tap.id, loop::Shape::Kind::kSegment, point(tap.a), point(tap.b)});
+  for (const Tap& tap : geometry.taps)
+    shapes.push_back({tap.id, loop::Shape::Kind::kSegment, point(tap.a), point(tap.b)});
   for (const Piece& piece : geometry.pieces)
-    shapes.push_back({geometry.strands[static_cast<size_t>(piece.strand)].id, loop::Shape::Kind::kSegment, point(piece.a),
-                      point(piece.b)});
+    shapes.push_back({geometry.strands[static_cast<size_t>(piece.strand)].id, loop::Shape::Kind::kSegment,
+                      point(piece.a), point(piece.b)});
   return loop::SpatialIndex(std::move(shapes));
 }
 

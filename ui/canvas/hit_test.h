@@ -12,7 +12,8 @@ class HitTest {
   HitTest() = default;
   explicit HitTest(const Geometry& geometry);
 
-  /// `place` in the px of the geometry. Symbols win over taps and runs, the nearest wins among equals; 0 within no reach.
+  /// `place` in the px of the geometry. Symbols win over taps and runs, the nearest wins among equals; 0 within no
+  /// reach.
   loop::Id at(QPointF place, double reach = 6) const;
 
  private:

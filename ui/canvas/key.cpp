@@ -52,8 +52,8 @@ double ScenePainter::weightKeyWidth(const std::vector<double>& flows) const {
 // hides what is drawn under it, and says so with a hairline.
 void ScenePainter::foot() {
   const theme::Theme& theme = scene_.theme;
-  const std::vector<double> flows = keyFlows(
-      quantity::toShown(scene_.dressing.designFlow_m3s, quantity::Quantity::kFlow, scene_.picture.units));
+  const std::vector<double> flows =
+      keyFlows(quantity::toShown(scene_.dressing.designFlow_m3s, quantity::Quantity::kFlow, scene_.picture.units));
   const bool legend = scene_.dressing.scale.valid;
   const double keyWidth = weightKeyWidth(flows), row = 24 * theme.textFactor;
   const bool above = legend && legendBar().right() + 30 > view_.right() - kMargin - keyWidth;
@@ -64,7 +64,8 @@ void ScenePainter::foot() {
     painter_.drawLine(QPointF(view_.left(), std::floor(top) + 0.5), QPointF(view_.right(), std::floor(top) + 0.5));
   }
   if (legend) colourLegend();
-  if (!flows.empty() && keyWidth <= view_.width() - 2 * kMargin) weightKey(above ? top + row - 4 : view_.bottom() - kFoot);
+  if (!flows.empty() && keyWidth <= view_.width() - 2 * kMargin)
+    weightKey(above ? top + row - 4 : view_.bottom() - kFoot);
 }
 
 // "flow, L/s — 0.5 — 2 — 5 — 10", right foot, each number behind a line of the weight that flow has.
@@ -104,8 +105,7 @@ void ScenePainter::colourLegend() {
   const QFont font = theme.font(theme::Text::kNote);
   const QFontMetricsF metrics(font);
   const QRectF bar = legendBar();
-  const theme::ColourScale& colours =
-      scene_.picture.colourBy == ColourBy::kPressure ? theme.cividis : theme.viridis;
+  const theme::ColourScale& colours = scene_.picture.colourBy == ColourBy::kPressure ? theme.cividis : theme.viridis;
   QLinearGradient gradient(bar.topLeft(), bar.topRight());
   for (size_t i = 0; i < colours.stops.size(); ++i)
     gradient.setColorAt(static_cast<double>(i) / static_cast<double>(colours.stops.size() - 1), colours.stops[i]);

@@ -45,7 +45,11 @@ class Placer {
  public:
   Placer(const Geometry& geometry, const Dressing& dressing, const Topology& topology, const LoopPicture& picture,
          const theme::Theme& theme, const PaintOptions& options)
-      : geometry_(geometry), dressing_(dressing), topology_(topology), picture_(picture), theme_(theme),
+      : geometry_(geometry),
+        dressing_(dressing),
+        topology_(topology),
+        picture_(picture),
+        theme_(theme),
         options_(options) {
     const double full = theme.style(theme::Text::kNote).px * theme.textFactor;
     px_ = static_cast<int>(std::lround(full * std::min(1.0, geometry.symbolScale / 0.6)));
@@ -80,8 +84,10 @@ class Placer {
   void wish(loop::Id id, const QString& text, std::vector<QPointF> centres, int weight, LabelInk ink, int rank) {
     if (text.isEmpty()) return;
     const bool chosen = id == picture_.selected && id != 0;
-    Wish out{{id, text, {}, {}, px_, chosen ? 600 : weight, chosen && ink != LabelInk::kUnder ? LabelInk::kAccent : ink},
-             std::move(centres), chosen ? 0 : rank};
+    Wish out{
+        {id, text, {}, {}, px_, chosen ? 600 : weight, chosen && ink != LabelInk::kUnder ? LabelInk::kAccent : ink},
+        std::move(centres),
+        chosen ? 0 : rank};
     wishes_.push_back(std::move(out));
   }
 
@@ -118,8 +124,7 @@ class Placer {
     const QString tag = QString::fromStdString(pump.tag);
     if (!picture_.results) return tag;
     for (const network::PumpResult& result : picture_.results->pumps)
-      if (result.id == pump.id)
-        return QObject::tr("%1  %2 % speed").arg(tag, theme::numberText(100 * result.speed, 0));
+      if (result.id == pump.id) return QObject::tr("%1  %2 % speed").arg(tag, theme::numberText(100 * result.speed, 0));
     return tag;
   }
 
@@ -133,14 +138,16 @@ class Placer {
       const QPointF edge(c.x() + 12 * mark.scale + 8 * mark.scale + 3, c.y() - 9.3 * mark.scale + 0.35 * px_);
       const QPointF left(c.x() - half - 4 - metrics(px_, 600).horizontalAdvance(text) / 2, edge.y());
       const QPointF above(c.x(), c.y() - half - 3);
-      wish(mark.id, text, {right(edge, text, 600), left, above, above - QPointF(0, 0.9 * px_)}, 600, LabelInk::kUnder, 1);
+      wish(mark.id, text, {right(edge, text, 600), left, above, above - QPointF(0, 0.9 * px_)}, 600, LabelInk::kUnder,
+           1);
     }
     if (!options_.tags) return;
     const double wide = metrics(px_, 400).horizontalAdvance(tag) / 2 + 4;
     const QPointF below(c.x(), c.y() + half + 1.15 * px_), above(c.x(), c.y() - half - 0.35 * px_);
     const QPointF right(c.x() + half + wide, c.y() + half - 2), left(c.x() - half - wide, c.y() + half - 2);
     const std::vector<QPointF> places{mark.above ? above : below, right, left};
-    wish(mark.id, tag, places, look.under ? 600 : 400, look.under ? LabelInk::kUnder : LabelInk::kQuiet, look.under ? 2 : 5);
+    wish(mark.id, tag, places, look.under ? 600 : 400, look.under ? LabelInk::kUnder : LabelInk::kQuiet,
+         look.under ? 2 : 5);
   }
 
   void wishForPlant(const Mark& mark) {
@@ -155,10 +162,11 @@ class Placer {
       return theme::numberText(value, std::abs(value - std::round(value)) < 0.05 ? 0 : 1);
     };
     if (plant.supply_c && plant.return_c)
-      lines.emplace_back(bare(*plant.supply_c, quantity::Quantity::kTemperature) + " / " +
-                             bare(*plant.return_c, quantity::Quantity::kTemperature) + " " +
-                             QString::fromUtf8(quantity::unitLabel(quantity::Quantity::kTemperature, picture_.units).data()),
-                         400);
+      lines.emplace_back(
+          bare(*plant.supply_c, quantity::Quantity::kTemperature) + " / " +
+              bare(*plant.return_c, quantity::Quantity::kTemperature) + " " +
+              QString::fromUtf8(quantity::unitLabel(quantity::Quantity::kTemperature, picture_.units).data()),
+          400);
     if (plant.minimum_flow_l_s)
       lines.emplace_back(QObject::tr("min %1").arg(format(*plant.minimum_flow_l_s, quantity::Quantity::kFlow)), 400);
     const double side = mark.quarterTurns == 2 ? -1 : 1;
@@ -178,7 +186,8 @@ class Placer {
     const double half = 12 * mark.scale;
     const QPointF above(c.x(), c.y() - half - 4), below(c.x(), c.y() + half + 1.1 * px_);
     const QPointF beside = right({c.x() + half + 4, c.y() + 0.35 * px_}, text, weight);
-    wish(mark.id, text, upright ? std::vector{beside, above} : std::vector{above, below}, weight, LabelInk::kPlain, rank);
+    wish(mark.id, text, upright ? std::vector{beside, above} : std::vector{above, below}, weight, LabelInk::kPlain,
+         rank);
   }
 
   void wishBeside(const Mark& mark, const QString& text, int rank) {
@@ -186,7 +195,9 @@ class Placer {
     const QPointF c = mark.centre;
     const double half = 10 * mark.scale;
     wish(mark.id, text,
-         {right({c.x() + half + 5, c.y() + 0.35 * px_}, text, 400), {c.x(), c.y() + half + 1.1 * px_}, {c.x(), c.y() - half - 4}},
+         {right({c.x() + half + 5, c.y() + 0.35 * px_}, text, 400),
+          {c.x(), c.y() + half + 1.1 * px_},
+          {c.x(), c.y() - half - 4}},
          400, LabelInk::kPlain, rank);
   }
 
@@ -205,14 +216,14 @@ class Placer {
   void wishForSizes() {
     for (const Piece& piece : geometry_.pieces) {
       const Strand& strand = geometry_.strands[static_cast<size_t>(piece.strand)];
-      const bool level = std::abs(piece.a.y() - piece.b.y()) < 0.5, longEnough = std::abs(piece.a.x() - piece.b.x()) > 40;
+      const bool level = std::abs(piece.a.y() - piece.b.y())<0.5, longEnough = std::abs(piece.a.x() - piece.b.x())> 40;
       if (strand.kind != PartKind::kPairedRun || !strand.isReturn || !level || !longEnough || piece.along > 1) continue;
       const PartRef* part = topology_.part(strand.id);
       if (!part) continue;
       const loop::PairedRun& run = picture_.loop->paired_runs[static_cast<size_t>(part->index)];
       if (sizeBegins(run))
-        wish(strand.id, QString::fromStdString(run.pipe.size), {{(piece.a.x() + piece.b.x()) / 2, piece.a.y() - 7}}, 400,
-             LabelInk::kQuiet, 7);
+        wish(strand.id, QString::fromStdString(run.pipe.size), {{(piece.a.x() + piece.b.x()) / 2, piece.a.y() - 7}},
+             400, LabelInk::kQuiet, 7);
     }
   }
 

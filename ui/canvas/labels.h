@@ -14,7 +14,7 @@ enum class LabelInk { kStrong, kPlain, kQuiet, kUnder, kAccent };
 struct Label {
   loop::Id id = 0;
   QString text;
-  QPointF baseline;   ///< Start of the text, in the px of the geometry.
+  QPointF baseline;  ///< Start of the text, in the px of the geometry.
   QRectF box;
   int px = 11;
   int weight = 400;

@@ -25,7 +25,9 @@ LoopCanvas::LoopCanvas(const theme::ThemeHolder& holder, QWidget* parent)
 
 LoopCanvas::~LoopCanvas() = default;
 
-const loop::Loop& LoopCanvas::loop() const { return loop_; }
+const loop::Loop& LoopCanvas::loop() const {
+  return loop_;
+}
 
 void LoopCanvas::setLoop(loop::Loop loop, bool keepView) {
   loop_ = std::move(loop);
@@ -155,7 +157,9 @@ void LoopCanvas::panBy(QPointF px) {
   emit viewChanged();
 }
 
-QPointF LoopCanvas::toScreen(loop::Point at) const { return origin_ + QPointF(at.x_m * scale_, -at.y_m * scale_); }
+QPointF LoopCanvas::toScreen(loop::Point at) const {
+  return origin_ + QPointF(at.x_m * scale_, -at.y_m * scale_);
+}
 
 loop::Id LoopCanvas::hit(QPointF place) const {
   ensureCache();

@@ -85,9 +85,9 @@ class LoopCanvas : public QWidget {
   loop::Id selected_ = 0;
   loop::Id hovered_ = 0;
   QPointF hoverPlace_;
-  double scale_ = 1;          ///< px per metre.
-  QPointF origin_;            ///< Where metre (0, 0) stands in the widget.
-  bool fitted_ = true;        ///< Follow the size of the widget until the user moves the view.
+  double scale_ = 1;    ///< px per metre.
+  QPointF origin_;      ///< Where metre (0, 0) stands in the widget.
+  bool fitted_ = true;  ///< Follow the size of the widget until the user moves the view.
   bool stale_ = false;
   bool spaceHeld_ = false;
   bool keyboardFocus_ = false;

@@ -1,5 +1,6 @@
 #pragma once
-// What a picture of the loop shows, and the one function that paints it: the window and the printed report use the same.
+// What a picture of the loop shows, and the one function that paints it: the window and the printed report use the
+// same.
 
 #include <QRectF>
 
@@ -34,8 +35,8 @@ struct PaintOptions {
   double largestSymbol = 1.25;  ///< Symbols never grow beyond this share of their drawn size.
 };
 
-/// Paints the loop fitted into `box`, every line and letter as vectors. Coordinates of the painter are taken as px (in a
-/// report: scale the painter so that one unit is 1/96 inch or whatever the weight of lines asks for).
+/// Paints the loop fitted into `box`, every line and letter as vectors. Coordinates of the painter are taken as px (in
+/// a report: scale the painter so that one unit is 1/96 inch or whatever the weight of lines asks for).
 void paintLoop(QPainter& painter, const QRectF& box, const LoopPicture& picture, const theme::Theme& theme,
                const PaintOptions& options = {});
 

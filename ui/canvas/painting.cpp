@@ -10,7 +10,9 @@ namespace {
 constexpr double kLevelMargin = 16;
 constexpr double kTinySymbol = 0.3;  // below this a terminal is a filled square
 
-double length(QPointF v) { return std::hypot(v.x(), v.y()); }
+double length(QPointF v) {
+  return std::hypot(v.x(), v.y());
+}
 
 }  // namespace
 
@@ -85,8 +87,8 @@ void ScenePainter::levelNames() {
     if (y < view_.top() || y > view_.bottom() + 20 || y - above < 14 * theme.textFactor) continue;
     above = y;
     const auto words = [&](double baseline, const QString& text, int weight) {
-      theme::drawHaloText(painter_, {view_.left() + kLevelMargin, baseline}, text, theme.font(theme::Text::kNote, weight),
-                          theme.colours.ink3, theme.colours.sheet);
+      theme::drawHaloText(painter_, {view_.left() + kLevelMargin, baseline}, text,
+                          theme.font(theme::Text::kNote, weight), theme.colours.ink3, theme.colours.sheet);
     };
     words(y - 6, QString::fromStdString(level->name), 600);
     if (!scene_.options.elevations) continue;
@@ -155,15 +157,16 @@ void ScenePainter::lines() {
     const int pen = dressing.strands[static_cast<size_t>(piece.strand)].pen;
     const LinePen& look = dressing.pens[static_cast<size_t>(pen)];
     std::vector<QLineF>& lines = byPen[static_cast<size_t>(pen)];
-    if (look.dashed) addDashes(piece, look.leg, look.width, lines);
-    else lines.emplace_back(piece.a, piece.b);
+    if (look.dashed)
+      addDashes(piece, look.leg, look.width, lines);
+    else
+      lines.emplace_back(piece.a, piece.b);
   }
   const double rim = 2 * scene_.theme.strokeFactor;
   for (const bool outline : {true, false})
     for (size_t i = 0; i < byPen.size(); ++i) {
       const LinePen& pen = dressing.pens[i];
-      if (outline && pen.outlined)
-        strokeLines(byPen[i], scene_.theme.colours.ink2, pen.width + rim, !pen.dashed);
+      if (outline && pen.outlined) strokeLines(byPen[i], scene_.theme.colours.ink2, pen.width + rim, !pen.dashed);
       if (!outline) strokeLines(byPen[i], QColor::fromRgba(pen.colour), pen.width, !pen.dashed);
     }
 }
@@ -227,8 +230,8 @@ void ScenePainter::mark(const Mark& mark) {
   const QColor ink = inkOf(mark), ground = theme.colours.sheet;
   const double width = theme.strokeFactor * (chosen ? 4.0 / 3 : 1);
   if (mark.part.kind == PartKind::kPlant)
-    drawStrokes(painter_, plantStrokes(mark.symbol, mark.portHalf), mark.centre, mark.scale, mark.quarterTurns, ink, ground,
-                width);
+    drawStrokes(painter_, plantStrokes(mark.symbol, mark.portHalf), mark.centre, mark.scale, mark.quarterTurns, ink,
+                ground, width);
   else
     drawStrokes(painter_, strokesOf(mark.symbol), mark.centre, mark.scale, mark.quarterTurns, ink, ground, width);
   if (mark.symbol == Symbol::kSensor && mark.scale > 0.45) {
@@ -278,7 +281,8 @@ void ScenePainter::openEnds() {
   const double size = std::clamp(scene_.geometry.symbolScale, 0.3, 1.0);
   for (const QPointF& at : scene_.geometry.openEnds)
     if (visible_.contains(at))
-      drawStrokes(painter_, strokesOf(Symbol::kOpenEnd), at, size, 0, scene_.theme.colours.under, scene_.theme.colours.sheet);
+      drawStrokes(painter_, strokesOf(Symbol::kOpenEnd), at, size, 0, scene_.theme.colours.under,
+                  scene_.theme.colours.sheet);
 }
 
 bool ScenePainter::onLevelLine(const Label& label) const {
@@ -294,9 +298,9 @@ void ScenePainter::words() {
   const theme::Colours& c = scene_.theme.colours;
   for (const Label& label : scene_.labels) {
     if (!visible_.intersects(label.box)) continue;
-    const QColor ink = label.ink == LabelInk::kStrong  ? c.ink1
-                       : label.ink == LabelInk::kPlain ? c.ink2
-                       : label.ink == LabelInk::kUnder ? c.under
+    const QColor ink = label.ink == LabelInk::kStrong   ? c.ink1
+                       : label.ink == LabelInk::kPlain  ? c.ink2
+                       : label.ink == LabelInk::kUnder  ? c.under
                        : label.ink == LabelInk::kAccent ? c.accent
                                                         : c.ink3;
     if (label.ink == LabelInk::kUnder || onLevelLine(label)) {

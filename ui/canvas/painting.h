@@ -14,7 +14,8 @@ class SymbolPixmaps {
   void use(double deviceRatio);  ///< Forgets everything when the ratio is another.
   void clear() { terminals_.clear(); }
   /// Draws a terminal's symbol (without its bar) from the cache.
-  void drawTerminal(QPainter& painter, QPointF centre, double scale, const QColor& ink, const QColor& ground, double width);
+  void drawTerminal(QPainter& painter, QPointF centre, double scale, const QColor& ink, const QColor& ground,
+                    double width);
 
  private:
   double ratio_ = 1;

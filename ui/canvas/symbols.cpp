@@ -48,10 +48,18 @@ class DataReader {
   void step(char command) {
     const QPointF here = path_.currentPosition();
     switch (command) {
-      case 'M': path_.moveTo(point()); break;
-      case 'L': path_.lineTo(point()); break;
-      case 'H': path_.lineTo(number(), here.y()); break;
-      case 'V': path_.lineTo(here.x(), number()); break;
+      case 'M':
+        path_.moveTo(point());
+        break;
+      case 'L':
+        path_.lineTo(point());
+        break;
+      case 'H':
+        path_.lineTo(number(), here.y());
+        break;
+      case 'V':
+        path_.lineTo(here.x(), number());
+        break;
       case 'Q':
         control_ = point();
         path_.quadTo(control_, point());
@@ -60,9 +68,14 @@ class DataReader {
         control_ = 2 * here - control_;
         path_.quadTo(control_, point());
         break;
-      case 'A': halfEllipse(here); break;
-      case 'Z': path_.closeSubpath(); break;
-      default: throw std::logic_error("symbol path: unknown command");
+      case 'A':
+        halfEllipse(here);
+        break;
+      case 'Z':
+        path_.closeSubpath();
+        break;
+      default:
+        throw std::logic_error("symbol path: unknown command");
     }
   }
 
@@ -99,7 +112,8 @@ std::vector<SymbolStroke> make(Symbol symbol) {
   switch (symbol) {
     case Symbol::kPump:
       return {stroke("M-12 0 H-10 M10 0 H12"), circle(0, 0, 10), stroke("M-5 -8.7 L10 0 L-5 8.7")};
-    case Symbol::kIsolatingValve: return {stroke(kStubs), stroke(kBowTie, 1.5, Fill::kGround)};
+    case Symbol::kIsolatingValve:
+      return {stroke(kStubs), stroke(kBowTie, 1.5, Fill::kGround)};
     case Symbol::kBalancingValve:
       return {stroke(kStubs), stroke("M0 0 V-11 M-4.5 -11 H4.5 M-3 -8 H3", 1.25), stroke(kBowTie, 1.5, Fill::kGround)};
     case Symbol::kControlValve:
@@ -114,8 +128,10 @@ std::vector<SymbolStroke> make(Symbol symbol) {
     case Symbol::kEssential:
       return {stroke("M0 -8 L6.93 -4 L6.93 4 L0 8 L-6.93 4 L-6.93 -4 Z", 1.5, Fill::kGround),
               stroke("M0 -4 L3.46 -2 L3.46 2 L0 4 L-3.46 2 L-3.46 -2 Z", 0, Fill::kInk)};
-    case Symbol::kUnderSupplied: return {stroke("M-7 -5 H7 L0 7 Z", 0, Fill::kInk)};
-    case Symbol::kSensor: return {circle(0, 0, 10)};
+    case Symbol::kUnderSupplied:
+      return {stroke("M-7 -5 H7 L0 7 Z", 0, Fill::kInk)};
+    case Symbol::kSensor:
+      return {circle(0, 0, 10)};
     case Symbol::kVessel:
       return {stroke("M0 18 V22"), stroke("M-9 -9 A9 9 0 0 1 9 -9 V9 A9 9 0 0 1 -9 9 Z", 1.5, Fill::kGround),
               stroke("M-9 1 Q-4.5 5 0 1 T9 1", 1.25)};
@@ -125,7 +141,8 @@ std::vector<SymbolStroke> make(Symbol symbol) {
       return {stroke("M0 -9 V-4.5 M0 4.5 V9", 1.75), circle(0, 0, 4.5, 1.75)};
     case Symbol::kChiller:
     case Symbol::kBoiler:
-    case Symbol::kHeatExchanger: return plantStrokes(symbol, 26);
+    case Symbol::kHeatExchanger:
+      return plantStrokes(symbol, 26);
   }
   throw std::logic_error("symbol without a shape");
 }
@@ -148,7 +165,9 @@ SymbolStroke coil(double portHalf, double side) {
 
 }  // namespace
 
-QPainterPath pathFromData(const char* data) { return DataReader(data).read(); }
+QPainterPath pathFromData(const char* data) {
+  return DataReader(data).read();
+}
 
 const std::vector<SymbolStroke>& strokesOf(Symbol symbol) {
   static const auto kAll = [] {

@@ -1,6 +1,6 @@
 #pragma once
-// The symbols of the drawing as paths on a 24-unit grid, stroke 1.5; parts on a run connect at ±12. The shapes are those
-// of the look's symbol sheet and of no other source.
+// The symbols of the drawing as paths on a 24-unit grid, stroke 1.5; parts on a run connect at ±12. The shapes are
+// those of the look's symbol sheet and of no other source.
 
 #include <QColor>
 #include <QPainterPath>
@@ -12,9 +12,21 @@ class QPainter;
 namespace ebbline::canvas {
 
 enum class Symbol {
-  kChiller, kBoiler, kHeatExchanger,  ///< Drawn by drawPlant, whose ports move.
-  kPump, kIsolatingValve, kBalancingValve, kControlValve, kStrainer,
-  kTerminal, kEssential, kUnderSupplied, kSensor, kVessel, kNote, kOpenEnd
+  kChiller,
+  kBoiler,
+  kHeatExchanger,  ///< Drawn by drawPlant, whose ports move.
+  kPump,
+  kIsolatingValve,
+  kBalancingValve,
+  kControlValve,
+  kStrainer,
+  kTerminal,
+  kEssential,
+  kUnderSupplied,
+  kSensor,
+  kVessel,
+  kNote,
+  kOpenEnd
 };
 
 /// One stroke of a symbol, back to front.

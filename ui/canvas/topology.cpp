@@ -124,9 +124,8 @@ void Topology::measureSpacing() {
   // then by place makes the neighbours adjacent.
   std::vector<loop::Point> places;
   for (const loop::Terminal& terminal : loop_.terminals) places.push_back(terminal.at);
-  std::sort(places.begin(), places.end(), [](const loop::Point& a, const loop::Point& b) {
-    return a.y_m != b.y_m ? a.y_m < b.y_m : a.x_m < b.x_m;
-  });
+  std::sort(places.begin(), places.end(),
+            [](const loop::Point& a, const loop::Point& b) { return a.y_m != b.y_m ? a.y_m < b.y_m : a.x_m < b.x_m; });
   std::vector<double> gaps;
   for (size_t i = 1; i < places.size(); ++i) {
     const double gap = std::hypot(places[i].x_m - places[i - 1].x_m, places[i].y_m - places[i - 1].y_m);

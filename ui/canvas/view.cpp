@@ -26,7 +26,8 @@ QMarginsF wordMargins(const loop::Loop& loop, const theme::Theme& theme, const P
 }
 
 // The plant's words stand to its right; only where the plant is the rightmost thing do they need room.
-double plantWords(const loop::Loop& loop, const Geometry& geometry, const theme::Theme& theme, const PaintOptions& options) {
+double plantWords(const loop::Loop& loop, const Geometry& geometry, const theme::Theme& theme,
+                  const PaintOptions& options) {
   if (!options.tags) return 0;
   const QFontMetricsF metrics(theme.font(theme::Text::kNote, 600));
   double out = 0;

@@ -7,8 +7,8 @@
 namespace ebbline::canvas {
 
 struct View {
-  double scale = 1;   ///< px per metre.
-  QPointF origin;     ///< Where metre (0, 0) stands.
+  double scale = 1;  ///< px per metre.
+  QPointF origin;    ///< Where metre (0, 0) stands.
 };
 
 constexpr double kSmallestScale = 0.02, kLargestScale = 400;  ///< px per metre

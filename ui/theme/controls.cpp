@@ -13,8 +13,8 @@ void drawFocusRing(QPainter& painter, const QRectF& box, const Theme& theme) {
   painter.drawRoundedRect(box, theme.radius.button, theme.radius.button);
 }
 
-constexpr int kRing = 3;     // room for the focus ring round a control
-constexpr int kGap = 28;     // between two text tabs
+constexpr int kRing = 3;  // room for the focus ring round a control
+constexpr int kGap = 28;  // between two text tabs
 constexpr int kUnderline = 3;
 
 }  // namespace
@@ -125,7 +125,8 @@ void TextTabs::paintEvent(QPaintEvent*) {
     painter.setFont(font);
     painter.setPen(!isTabEnabled(i) ? theme.colours.ink4 : chosen || hovered ? theme.colours.ink1 : theme.colours.ink2);
     painter.drawText(word, Qt::AlignVCenter | Qt::AlignLeft | Qt::TextDontClip, tabText(i));
-    if (chosen) painter.fillRect(QRect(word.left(), box.bottom() + 1 - kUnderline, width, kUnderline), theme.colours.accent);
+    if (chosen)
+      painter.fillRect(QRect(word.left(), box.bottom() + 1 - kUnderline, width, kUnderline), theme.colours.accent);
     if (chosen && hasFocus()) drawFocusRing(painter, QRectF(word).adjusted(-7, 6, 7, -6), theme);
   }
 }

@@ -8,7 +8,9 @@
 namespace ebbline::theme {
 namespace {
 
-QPolygonF polygon(std::initializer_list<QPointF> points) { return QPolygonF(QList<QPointF>(points)); }
+QPolygonF polygon(std::initializer_list<QPointF> points) {
+  return QPolygonF(QList<QPointF>(points));
+}
 
 // Paths of the interface icons, drawn for this program on a 16-unit square.
 QPainterPath undoPath() {
@@ -103,24 +105,42 @@ class PathEngine : public QIconEngine {
 
 QPainterPath iconPath(Icon icon) {
   switch (icon) {
-    case Icon::kUndo: return undoPath();
-    case Icon::kRedo: return QTransform::fromScale(-1, 1).map(undoPath());
-    case Icon::kSun: return sunPath();
-    case Icon::kMoon: return moonPath();
-    case Icon::kPresent: return lines({{{-7, -5}, {7, -5}, {7, 4}, {-7, 4}, {-7, -5}}, {{-3, 7}, {3, 7}}});
-    case Icon::kChevronRight: return lines({{{-2, -4}, {2, 0}, {-2, 4}}});
-    case Icon::kChevronLeft: return lines({{{2, -4}, {-2, 0}, {2, 4}}});
-    case Icon::kChevronDown: return lines({{{-4, -2}, {0, 2}, {4, -2}}});
-    case Icon::kTick: return lines({{{-4.5, 0.5}, {-1.5, 3.5}, {4.5, -3.5}}});
-    case Icon::kWarning: return warningPath();
-    case Icon::kSearch: return searchPath();
-    case Icon::kCross: return lines({{{-4, -4}, {4, 4}}, {{-4, 4}, {4, -4}}});
-    case Icon::kPlus: return lines({{{-5, 0}, {5, 0}}, {{0, -5}, {0, 5}}});
-    case Icon::kSelect: return lines({{{-4, -7}, {-4, 5}, {-1, 2.2}, {1.2, 7}, {3, 6.2}, {0.9, 1.5}, {5, 1.5}, {-4, -7}}});
-    case Icon::kOpen: return lines({{{-7, 5}, {-7, -5}, {-2, -5}, {-0.5, -3}, {6, -3}, {6, 5}, {-7, 5}}});
-    case Icon::kSave: return savePath();
-    case Icon::kPlay: return lines({{{-3.5, -5}, {5, 0}, {-3.5, 5}, {-3.5, -5}}});
-    case Icon::kPause: return lines({{{-3, -5}, {-3, 5}}, {{3, -5}, {3, 5}}});
+    case Icon::kUndo:
+      return undoPath();
+    case Icon::kRedo:
+      return QTransform::fromScale(-1, 1).map(undoPath());
+    case Icon::kSun:
+      return sunPath();
+    case Icon::kMoon:
+      return moonPath();
+    case Icon::kPresent:
+      return lines({{{-7, -5}, {7, -5}, {7, 4}, {-7, 4}, {-7, -5}}, {{-3, 7}, {3, 7}}});
+    case Icon::kChevronRight:
+      return lines({{{-2, -4}, {2, 0}, {-2, 4}}});
+    case Icon::kChevronLeft:
+      return lines({{{2, -4}, {-2, 0}, {2, 4}}});
+    case Icon::kChevronDown:
+      return lines({{{-4, -2}, {0, 2}, {4, -2}}});
+    case Icon::kTick:
+      return lines({{{-4.5, 0.5}, {-1.5, 3.5}, {4.5, -3.5}}});
+    case Icon::kWarning:
+      return warningPath();
+    case Icon::kSearch:
+      return searchPath();
+    case Icon::kCross:
+      return lines({{{-4, -4}, {4, 4}}, {{-4, 4}, {4, -4}}});
+    case Icon::kPlus:
+      return lines({{{-5, 0}, {5, 0}}, {{0, -5}, {0, 5}}});
+    case Icon::kSelect:
+      return lines({{{-4, -7}, {-4, 5}, {-1, 2.2}, {1.2, 7}, {3, 6.2}, {0.9, 1.5}, {5, 1.5}, {-4, -7}}});
+    case Icon::kOpen:
+      return lines({{{-7, 5}, {-7, -5}, {-2, -5}, {-0.5, -3}, {6, -3}, {6, 5}, {-7, 5}}});
+    case Icon::kSave:
+      return savePath();
+    case Icon::kPlay:
+      return lines({{{-3.5, -5}, {5, 0}, {-3.5, 5}, {-3.5, -5}}});
+    case Icon::kPause:
+      return lines({{{-3, -5}, {-3, 5}}, {{3, -5}, {3, 5}}});
   }
   return {};
 }
@@ -166,12 +186,24 @@ void drawMarker(QPainter& painter, Marker marker, QPointF centre, const QColor& 
   painter.setPen(Qt::NoPen);
   painter.setBrush(colour);
   switch (marker) {
-    case Marker::kSquare: painter.drawRect(QRectF(-3.2, -3.2, 6.4, 6.4)); break;
-    case Marker::kTriangle: painter.drawPolygon(polygon({{-4, 3.2}, {4, 3.2}, {0, -4}})); break;
-    case Marker::kTriangleDown: painter.drawPolygon(polygon({{-4, -3.2}, {4, -3.2}, {0, 4}})); break;
-    case Marker::kDiamond: painter.drawPolygon(polygon({{-4.2, 0}, {0, -4.2}, {4.2, 0}, {0, 4.2}})); break;
-    case Marker::kCircle: painter.drawEllipse(QPointF(), 3.5, 3.5); break;
-    case Marker::kBar: painter.drawRect(QRectF(-4.5, -1.5, 9, 3)); break;
+    case Marker::kSquare:
+      painter.drawRect(QRectF(-3.2, -3.2, 6.4, 6.4));
+      break;
+    case Marker::kTriangle:
+      painter.drawPolygon(polygon({{-4, 3.2}, {4, 3.2}, {0, -4}}));
+      break;
+    case Marker::kTriangleDown:
+      painter.drawPolygon(polygon({{-4, -3.2}, {4, -3.2}, {0, 4}}));
+      break;
+    case Marker::kDiamond:
+      painter.drawPolygon(polygon({{-4.2, 0}, {0, -4.2}, {4.2, 0}, {0, 4.2}}));
+      break;
+    case Marker::kCircle:
+      painter.drawEllipse(QPointF(), 3.5, 3.5);
+      break;
+    case Marker::kBar:
+      painter.drawRect(QRectF(-4.5, -1.5, 9, 3));
+      break;
     case Marker::kRing:
       painter.setPen(QPen(colour, 2));
       painter.setBrush(ground);

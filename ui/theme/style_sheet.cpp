@@ -126,18 +126,35 @@ QStatusBar::item { border: 0; }
 
 QHash<QString, QString> wordsOf(const Theme& theme) {
   const Colours& c = theme.colours;
-  const std::pair<const char*, QColor> colours[] = {
-      {"sheet", c.sheet}, {"panel", c.panel}, {"card", c.card}, {"field", c.field}, {"ink1", c.ink1}, {"ink2", c.ink2},
-      {"ink3", c.ink3}, {"ink4", c.ink4}, {"hairline", c.hairline}, {"rule", c.rule}, {"accent", c.accent},
-      {"accentHover", c.accentHover}, {"accentWash", c.accentWash}, {"onAccent", c.onAccent},
-      {"selection", c.selection}, {"focus", c.focus}, {"under", c.under}, {"ok", c.ok}, {"caution", c.caution}};
+  const std::pair<const char*, QColor> colours[] = {{"sheet", c.sheet},
+                                                    {"panel", c.panel},
+                                                    {"card", c.card},
+                                                    {"field", c.field},
+                                                    {"ink1", c.ink1},
+                                                    {"ink2", c.ink2},
+                                                    {"ink3", c.ink3},
+                                                    {"ink4", c.ink4},
+                                                    {"hairline", c.hairline},
+                                                    {"rule", c.rule},
+                                                    {"accent", c.accent},
+                                                    {"accentHover", c.accentHover},
+                                                    {"accentWash", c.accentWash},
+                                                    {"onAccent", c.onAccent},
+                                                    {"selection", c.selection},
+                                                    {"focus", c.focus},
+                                                    {"under", c.under},
+                                                    {"ok", c.ok},
+                                                    {"caution", c.caution}};
   QHash<QString, QString> words;
   for (const auto& [name, colour] : colours) words["@" + QString(name)] = colour.name();
-  const std::pair<const char*, int> sizes[] = {
-      {"card", theme.radius.card}, {"button", theme.radius.button}, {"field", theme.radius.field},
-      {"note", theme.font(Text::kNote).pixelSize()}, {"label", theme.font(Text::kLabel).pixelSize()},
-      {"title", theme.font(Text::kTitle).pixelSize()}, {"figure", theme.font(Text::kFigure).pixelSize()},
-      {"big", theme.font(Text::kBig).pixelSize()}};
+  const std::pair<const char*, int> sizes[] = {{"card", theme.radius.card},
+                                               {"button", theme.radius.button},
+                                               {"field", theme.radius.field},
+                                               {"note", theme.font(Text::kNote).pixelSize()},
+                                               {"label", theme.font(Text::kLabel).pixelSize()},
+                                               {"title", theme.font(Text::kTitle).pixelSize()},
+                                               {"figure", theme.font(Text::kFigure).pixelSize()},
+                                               {"big", theme.font(Text::kBig).pixelSize()}};
   for (const auto& [name, size] : sizes) words["#" + QString(name) + "px"] = QString("%1px").arg(size);
   return words;
 }
@@ -163,13 +180,26 @@ QString styleSheet(const Theme& theme) {
 QPalette palette(const Theme& theme) {
   const Colours& c = theme.colours;
   QPalette out;
-  const std::pair<QPalette::ColorRole, QColor> roles[] = {
-      {QPalette::Window, c.panel}, {QPalette::WindowText, c.ink1}, {QPalette::Base, c.field}, {QPalette::AlternateBase, c.panel},
-      {QPalette::ToolTipBase, c.card}, {QPalette::ToolTipText, c.ink1}, {QPalette::PlaceholderText, c.ink3},
-      {QPalette::Text, c.ink1}, {QPalette::Button, c.panel}, {QPalette::ButtonText, c.ink1}, {QPalette::BrightText, c.under},
-      {QPalette::Light, c.card}, {QPalette::Midlight, c.hairline}, {QPalette::Mid, c.rule}, {QPalette::Dark, c.ink3},
-      {QPalette::Shadow, c.ink1}, {QPalette::Highlight, c.selection}, {QPalette::HighlightedText, c.ink1},
-      {QPalette::Link, c.accent}, {QPalette::LinkVisited, c.accent}};
+  const std::pair<QPalette::ColorRole, QColor> roles[] = {{QPalette::Window, c.panel},
+                                                          {QPalette::WindowText, c.ink1},
+                                                          {QPalette::Base, c.field},
+                                                          {QPalette::AlternateBase, c.panel},
+                                                          {QPalette::ToolTipBase, c.card},
+                                                          {QPalette::ToolTipText, c.ink1},
+                                                          {QPalette::PlaceholderText, c.ink3},
+                                                          {QPalette::Text, c.ink1},
+                                                          {QPalette::Button, c.panel},
+                                                          {QPalette::ButtonText, c.ink1},
+                                                          {QPalette::BrightText, c.under},
+                                                          {QPalette::Light, c.card},
+                                                          {QPalette::Midlight, c.hairline},
+                                                          {QPalette::Mid, c.rule},
+                                                          {QPalette::Dark, c.ink3},
+                                                          {QPalette::Shadow, c.ink1},
+                                                          {QPalette::Highlight, c.selection},
+                                                          {QPalette::HighlightedText, c.ink1},
+                                                          {QPalette::Link, c.accent},
+                                                          {QPalette::LinkVisited, c.accent}};
   for (const auto& [role, colour] : roles) out.setColor(role, colour);
   for (const QPalette::ColorRole role : {QPalette::WindowText, QPalette::Text, QPalette::ButtonText})
     out.setColor(QPalette::Disabled, role, c.ink4);

@@ -16,21 +16,33 @@ struct Named {
   QColor Colours::*field;
 };
 
-constexpr Named kNamed[] = {
-    {"desk", &Colours::desk},           {"sheet", &Colours::sheet},
-    {"panel", &Colours::panel},         {"card", &Colours::card},
-    {"field", &Colours::field},         {"ink1", &Colours::ink1},
-    {"ink2", &Colours::ink2},           {"ink3", &Colours::ink3},
-    {"ink4", &Colours::ink4},           {"hairline", &Colours::hairline},
-    {"rule", &Colours::rule},           {"grid", &Colours::grid},
-    {"accent", &Colours::accent},       {"accentHover", &Colours::accentHover},
-    {"accentWash", &Colours::accentWash}, {"onAccent", &Colours::onAccent},
-    {"selection", &Colours::selection}, {"focus", &Colours::focus},
-    {"under", &Colours::under},         {"underWash", &Colours::underWash},
-    {"onUnder", &Colours::onUnder},     {"ok", &Colours::ok},
-    {"okWash", &Colours::okWash},       {"caution", &Colours::caution},
-    {"pipe", &Colours::pipe},           {"pipeIdle", &Colours::pipeIdle},
-    {"paper", &Colours::paper}};
+constexpr Named kNamed[] = {{"desk", &Colours::desk},
+                            {"sheet", &Colours::sheet},
+                            {"panel", &Colours::panel},
+                            {"card", &Colours::card},
+                            {"field", &Colours::field},
+                            {"ink1", &Colours::ink1},
+                            {"ink2", &Colours::ink2},
+                            {"ink3", &Colours::ink3},
+                            {"ink4", &Colours::ink4},
+                            {"hairline", &Colours::hairline},
+                            {"rule", &Colours::rule},
+                            {"grid", &Colours::grid},
+                            {"accent", &Colours::accent},
+                            {"accentHover", &Colours::accentHover},
+                            {"accentWash", &Colours::accentWash},
+                            {"onAccent", &Colours::onAccent},
+                            {"selection", &Colours::selection},
+                            {"focus", &Colours::focus},
+                            {"under", &Colours::under},
+                            {"underWash", &Colours::underWash},
+                            {"onUnder", &Colours::onUnder},
+                            {"ok", &Colours::ok},
+                            {"okWash", &Colours::okWash},
+                            {"caution", &Colours::caution},
+                            {"pipe", &Colours::pipe},
+                            {"pipeIdle", &Colours::pipeIdle},
+                            {"paper", &Colours::paper}};
 
 [[noreturn]] void damaged(const QString& what) {
   throw std::logic_error("look tokens: " + what.toStdString());
@@ -54,7 +66,9 @@ double number(const QJsonObject& in, const char* key) {
   return value.toDouble();
 }
 
-int whole(const QJsonObject& in, const char* key) { return static_cast<int>(std::lround(number(in, key))); }
+int whole(const QJsonObject& in, const char* key) {
+  return static_cast<int>(std::lround(number(in, key)));
+}
 
 QColor colour(const QJsonValue& value) {
   const QColor read(value.toString());
@@ -70,9 +84,11 @@ QVector<qreal> lengths(const QJsonArray& list) {
 
 Marker markerOf(const QString& name) {
   static constexpr std::pair<const char*, Marker> kNames[] = {
-      {"square", Marker::kSquare}, {"triangle", Marker::kTriangle}, {"diamond", Marker::kDiamond},
-      {"circle", Marker::kCircle}, {"plus", Marker::kPlus},         {"cross", Marker::kCross},
-      {"ring", Marker::kRing},     {"triangleDown", Marker::kTriangleDown}, {"bar", Marker::kBar}};
+      {"square", Marker::kSquare},   {"triangle", Marker::kTriangle},
+      {"diamond", Marker::kDiamond}, {"circle", Marker::kCircle},
+      {"plus", Marker::kPlus},       {"cross", Marker::kCross},
+      {"ring", Marker::kRing},       {"triangleDown", Marker::kTriangleDown},
+      {"bar", Marker::kBar}};
   for (const auto& [word, marker] : kNames)
     if (name == QLatin1String(word)) return marker;
   damaged("unknown marker \"" + name + "\"");
@@ -167,7 +183,9 @@ QColor ColourScale::at(double share) const {
   return {mix(a.red(), b.red()), mix(a.green(), b.green()), mix(a.blue(), b.blue())};
 }
 
-QFont Theme::font(Text text) const { return font(text, style(text).weight); }
+QFont Theme::font(Text text) const {
+  return font(text, style(text).weight);
+}
 
 QFont Theme::font(Text text, int weight) const {
   QFont out(families);

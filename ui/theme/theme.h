@@ -27,20 +27,20 @@ struct Colours {
   QColor ink1, ink2, ink3, ink4;           ///< Text from strong to quiet; ink4 is for disabled marks only.
   QColor hairline, rule, grid;             ///< Row lines; axes and control borders; plot grid.
   QColor accent, accentHover, accentWash, onAccent, selection, focus;  ///< The hand, never the data.
-  QColor under, underWash, onUnder;        ///< Under-supplied, wrong entry.
+  QColor under, underWash, onUnder;                                    ///< Under-supplied, wrong entry.
   QColor ok, okWash, caution;
-  QColor pipe, pipeIdle;                   ///< What is built; what has no flow.
-  QColor paper;                            ///< Printed page.
+  QColor pipe, pipeIdle;  ///< What is built; what has no flow.
+  QColor paper;           ///< Printed page.
 };
 
 enum class Marker { kSquare, kTriangle, kDiamond, kCircle, kPlus, kCross, kRing, kTriangleDown, kBar };
 
 /// One strategy in every plot and table: colour, dash and marker belong together.
 struct Series {
-  QString key;         ///< "dp_pump" …
-  QString words;       ///< "constant DP at the pump" …
-  QColor colour;       ///< Lines and markers, 3:1.
-  QColor label;        ///< Text, 4.5:1.
+  QString key;          ///< "dp_pump" …
+  QString words;        ///< "constant DP at the pump" …
+  QColor colour;        ///< Lines and markers, 3:1.
+  QColor label;         ///< Text, 4.5:1.
   QVector<qreal> dash;  ///< On and off in px; empty = solid. QPen wants multiples of its width: see seriesPen().
   Marker marker = Marker::kSquare;
 };
@@ -67,8 +67,8 @@ struct Space {
 struct Stroke {
   double hairline = 1, axis = 1, grid = 1, series = 2, seriesChosen = 2.75, ghost = 1, symbol = 1.5, symbolBold = 2;
   double pipeMin = 1.25, pipeMax = 4.5, pipeGain = 3.25;
-  QVector<qreal> returnDash;     ///< On and off in px.
-  double pairGap = 9;            ///< Between centres of a paired run, px at every zoom.
+  QVector<qreal> returnDash;  ///< On and off in px.
+  double pairGap = 9;         ///< Between centres of a paired run, px at every zoom.
 };
 
 struct Radius {
@@ -82,8 +82,8 @@ struct Motion {
 
 struct Theme {
   Mode mode = Mode::kLight;
-  double textFactor = 1;     ///< 1.6 in present mode.
-  double strokeFactor = 1;   ///< 1.5 in present mode.
+  double textFactor = 1;    ///< 1.6 in present mode.
+  double strokeFactor = 1;  ///< 1.5 in present mode.
   Colours colours;
   std::vector<Series> series;  ///< In the order of the tokens.
   ColourScale cividis;         ///< Ordered quantities: pressure, yearly energy.
@@ -97,8 +97,8 @@ struct Theme {
 
   bool dark() const { return mode == Mode::kDark; }
   const TextStyle& style(Text text) const { return type[static_cast<size_t>(text)]; }
-  QFont font(Text text) const;              ///< In pixels, scaled by textFactor.
-  QFont font(Text text, int weight) const;  ///< Same size, other weight (600 = chosen row, direct label).
+  QFont font(Text text) const;                       ///< In pixels, scaled by textFactor.
+  QFont font(Text text, int weight) const;           ///< Same size, other weight (600 = chosen row, direct label).
   const Series& seriesOf(const QString& key) const;  ///< REQUIRES: a key of the tokens.
 };
 
@@ -130,39 +130,60 @@ class ThemeHolder : public QObject {
   bool presenting_ = false;
 };
 
-// ---- the whole application -------------------------------------------------------------------------------------------
+// ---- the whole application
+// -------------------------------------------------------------------------------------------
 
 QPalette palette(const Theme& theme);
 /// One sheet for the whole program. Widgets choose a look by these dynamic properties:
-///   "look" on QPushButton/QToolButton: "primary", "quiet" (text only), "pill" (checkable), "tool" (left bar, icon over word)
-///   "look" on QLabel: "title", "note", "quiet" (ink2), "strong", "figure", "big", "under", "ok", "caution"
+///   "look" on QPushButton/QToolButton: "primary", "quiet" (text only), "pill" (checkable), "tool" (left bar, icon over
+///   word) "look" on QLabel: "title", "note", "quiet" (ink2), "strong", "figure", "big", "under", "ok", "caution"
 ///   "look" on QFrame/QWidget: "sheet", "panel", "card", "strip" (status strip), "bar" (top bar), "rule" (1 px line)
 ///   "wrong" = true on QLineEdit and spin boxes: border in `under`.
 QString styleSheet(const Theme& theme);
 void applyTheme(QApplication& application, const Theme& theme);  ///< Font, palette and sheet.
 
-// ---- drawing helpers -------------------------------------------------------------------------------------------------
+// ---- drawing helpers
+// -------------------------------------------------------------------------------------------------
 
 /// Pen of a series; chosen = 2.75 px. Dash converted to multiples of the width.
 QPen seriesPen(const Series& series, const Theme& theme, bool chosen = false);
 QPen dashedPen(const QColor& colour, double width, const QVector<qreal>& dashPx);  ///< dash in px.
 void drawMarker(QPainter& painter, Marker marker, QPointF centre, const QColor& colour, const QColor& ground,
                 double size = 7);
-/// The short line with its marker that stands before a strategy's name in a table (24 × 10 px); faded = not drawn in the plot.
-void drawSeriesSample(QPainter& painter, const QRectF& box, const Series& series, const Theme& theme, bool faded = false);
+/// The short line with its marker that stands before a strategy's name in a table (24 × 10 px); faded = not drawn in
+/// the plot.
+void drawSeriesSample(QPainter& painter, const QRectF& box, const Series& series, const Theme& theme,
+                      bool faded = false);
 /// Text with a halo of the ground (4 px), so that a line behind it does not touch it. `at` = baseline start.
 void drawHaloText(QPainter& painter, QPointF baseline, const QString& text, const QFont& font, const QColor& ink,
                   const QColor& ground, Qt::Alignment alignment = Qt::AlignLeft);
 
 enum class Icon {
-  kUndo, kRedo, kSun, kMoon, kPresent, kChevronRight, kChevronLeft, kChevronDown, kTick, kWarning, kSearch, kCross, kPlus,
-  kSelect, kOpen, kSave, kPlay, kPause
+  kUndo,
+  kRedo,
+  kSun,
+  kMoon,
+  kPresent,
+  kChevronRight,
+  kChevronLeft,
+  kChevronDown,
+  kTick,
+  kWarning,
+  kSearch,
+  kCross,
+  kPlus,
+  kSelect,
+  kOpen,
+  kSave,
+  kPlay,
+  kPause
 };
 QPainterPath iconPath(Icon icon);  ///< Centred on 0,0 in a 16-unit square; stroke 1.5, round ends, no fill.
 void drawIcon(QPainter& painter, Icon icon, QPointF centre, const QColor& ink, double scale = 1);
 QIcon icon(Icon icon, const Theme& theme);  ///< ink2; disabled ink4; 16 px (crisp at any device ratio).
 
-// ---- numbers ---------------------------------------------------------------------------------------------------------
+// ---- numbers
+// ---------------------------------------------------------------------------------------------------------
 
 /// Fixed decimals, thin space between thousands, true minus; not a number → en dash.
 QString numberText(double value, int decimals);

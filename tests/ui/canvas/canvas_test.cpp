@@ -31,7 +31,8 @@ class Canvas : public testing::Test {
   QWindow* window() { return canvas.windowHandle(); }
   void click(loop::Point at) { QTest::mouseClick(window(), Qt::LeftButton, {}, canvas.toScreen(at).toPoint()); }
   void wheel(QPoint at, int delta) {
-    QWheelEvent event(at, canvas.mapToGlobal(at), {}, {0, delta}, Qt::NoButton, Qt::NoModifier, Qt::NoScrollPhase, false);
+    QWheelEvent event(at, canvas.mapToGlobal(at), {}, {0, delta}, Qt::NoButton, Qt::NoModifier, Qt::NoScrollPhase,
+                      false);
     QCoreApplication::sendEvent(&canvas, &event);
   }
 
@@ -151,7 +152,8 @@ TEST_F(Canvas, RunsCarryTheScaleColourOfTheirPressure) {
   int best = 1000;
   for (int dx = -3; dx <= 3; ++dx) {
     const QColor got = picture.pixelColor(at.toPoint() + QPoint(dx, 0));
-    best = std::min(best, std::abs(got.red() - wanted.red()) + std::abs(got.green() - wanted.green()) + std::abs(got.blue() - wanted.blue()));
+    best = std::min(best, std::abs(got.red() - wanted.red()) + std::abs(got.green() - wanted.green()) +
+                              std::abs(got.blue() - wanted.blue()));
   }
   EXPECT_LE(best, 6);
 }
@@ -224,8 +226,8 @@ TEST(Frames, OfFiveThousandPartsCostLikeTheirNumber) {
     const double zoom = time([&](int i) { canvas.zoomBy(i % 2 ? 1.02 : 0.99, {640, 400}); });
     const double deep = (canvas.zoomBy(12, {640, 400}), time([&](int i) { canvas.panBy({i % 2 ? 7.0 : -7.0, 3}); }));
     const size_t parts = loop.terminals.size() + loop.paired_runs.size() + loop.pipe_runs.size() + loop.joints.size();
-    std::printf("%s: %zu parts; pan %.1f ms, recolour %.1f ms, zoom %.1f ms, pan close up %.1f ms\n", name, parts, pan, recolour,
-                zoom, deep);
+    std::printf("%s: %zu parts; pan %.1f ms, recolour %.1f ms, zoom %.1f ms, pan close up %.1f ms\n", name, parts, pan,
+                recolour, zoom, deep);
     return recolour;
   };
   const double small = frame(8, 52, "quarter"), large = frame(16, 104, "whole");

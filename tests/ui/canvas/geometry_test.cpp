@@ -22,7 +22,9 @@ struct Drawn {
 };
 
 bool cross(const Piece& p, const Piece& q) {
-  const auto side = [](QPointF a, QPointF b, QPointF c) { return (b.x() - a.x()) * (c.y() - a.y()) - (b.y() - a.y()) * (c.x() - a.x()); };
+  const auto side = [](QPointF a, QPointF b, QPointF c) {
+    return (b.x() - a.x()) * (c.y() - a.y()) - (b.y() - a.y()) * (c.x() - a.x());
+  };
   return side(p.a, p.b, q.a) * side(p.a, p.b, q.b) < -1e-6 && side(q.a, q.b, p.a) * side(q.a, q.b, p.b) < -1e-6;
 }
 
@@ -147,11 +149,13 @@ TEST(Weights, ResultsInAnotherOrderLandOnTheSameLines) {
   std::reverse(results.terminals.begin(), results.terminals.end());
   const Dressing& after = dresser.dress(drawn.geometry, drawn.topology, picture, theme);
   for (size_t i = 0; i < before.strands.size(); ++i) EXPECT_EQ(before.strands[i].width, after.strands[i].width);
-  for (size_t i = 0; i < before.terminals.size(); ++i) EXPECT_EQ(before.terminals[i].shortfall, after.terminals[i].shortfall);
+  for (size_t i = 0; i < before.terminals.size(); ++i)
+    EXPECT_EQ(before.terminals[i].shortfall, after.terminals[i].shortfall);
 }
 
 TEST(RoundScale, HasThreeToSixStepsOnRoundNumbersAroundTheRange) {
-  for (const auto& [low, high] : {std::pair{0.0, 62.0}, {-3.2, 57.8}, {0.0, 187.0}, {101.2, 101.9}, {0.0, 1e-5}, {5.0, 5.0}}) {
+  for (const auto& [low, high] :
+       {std::pair{0.0, 62.0}, {-3.2, 57.8}, {0.0, 187.0}, {101.2, 101.9}, {0.0, 1e-5}, {5.0, 5.0}}) {
     const Scale scale = roundScale(low, high);
     ASSERT_TRUE(scale.valid);
     EXPECT_LE(scale.low, low + 1e-9);

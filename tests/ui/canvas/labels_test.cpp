@@ -19,7 +19,8 @@ struct Labelled {
     picture.loop = &loop;
     picture.results = solved ? &results : nullptr;
     geometry = makeGeometry(loop, topology, scale, {});
-    labels = placeLabels(geometry, dresser.dress(geometry, topology, picture, theme), topology, picture, theme, options);
+    labels =
+        placeLabels(geometry, dresser.dress(geometry, topology, picture, theme), topology, picture, theme, options);
   }
   loop::Loop loop;
   Topology topology;
@@ -89,8 +90,9 @@ TEST(Labels, ShortfallsAreWrittenEvenWhereTerminalsStandClose) {
   for (const double scale : {5.0, 6.0, 7.0, 8.0, 12.0}) {
     const Labelled drawn(trial::building(4, 6), scale, true);
     if (drawn.labels.empty()) continue;  // all text is below 6 px
-    const auto told = std::count_if(drawn.labels.begin(), drawn.labels.end(),
-                                    [](const Label& label) { return label.text.endsWith('%') && label.ink == LabelInk::kUnder; });
+    const auto told = std::count_if(drawn.labels.begin(), drawn.labels.end(), [](const Label& label) {
+      return label.text.endsWith('%') && label.ink == LabelInk::kUnder;
+    });
     EXPECT_EQ(told, 2) << "at " << scale << " px per metre";
   }
 }

@@ -138,19 +138,23 @@ network::Results results(const loop::Loop& loop, double share) {
     const double requested = shut ? 0 : share * t.design_flow_l_s * 1e-3;
     const double shortfall = number == 1 ? 0.17 : number == 2 ? 0.08 : 0;
     const double delivered = requested * (1 - shortfall);
-    out.terminals.push_back({t.id, t.tag, requested, delivered, shortfall > 0 ? 1 : shut ? 0 : 0.35 + 0.05 * (number % 9),
+    out.terminals.push_back({t.id, t.tag, requested, delivered,
+                             shortfall > 0 ? 1
+                             : shut        ? 0
+                                           : 0.35 + 0.05 * (number % 9),
                              53e3, 20e3, shortfall, shortfall > 0});
     out.parts.push_back({network::Element::Kind::kTerminal, t.id, Side::kSingle, t.tag, delivered, 53e3, 0, 0});
     needed[t.from.joint] += delivered;
   }
   // Runs were added from the plant outwards, so going backwards meets every outer run first.
-  for (auto run = loop.paired_runs.rbegin(); run != loop.paired_runs.rend(); ++run) needed[run->from] += needed[run->to];
+  for (auto run = loop.paired_runs.rbegin(); run != loop.paired_runs.rend(); ++run)
+    needed[run->from] += needed[run->to];
   std::map<Id, double> pressure{{loop.paired_runs.front().from, 60e3}};
   for (const loop::PairedRun& run : loop.paired_runs) {
     pressure[run.to] = pressure[run.from] - 1.4e3;
     for (const Side side : {Side::kSupply, Side::kReturn})
-      out.parts.push_back({network::Element::Kind::kPipe, run.id, side, run.tag, (side == Side::kSupply ? 1 : -1) * needed[run.to],
-                           1e3, 0.8, 40 + 3e4 * needed[run.to]});
+      out.parts.push_back({network::Element::Kind::kPipe, run.id, side, run.tag,
+                           (side == Side::kSupply ? 1 : -1) * needed[run.to], 1e3, 0.8, 40 + 3e4 * needed[run.to]});
   }
   const double all = needed[loop.paired_runs.front().from];
   for (const loop::PipeRun& run : loop.pipe_runs)
@@ -164,7 +168,8 @@ network::Results results(const loop::Loop& loop, double share) {
   for (const loop::Joint& joint : loop.joints) {
     if (joint.paired)
       for (const Side side : {Side::kSupply, Side::kReturn})
-        out.ends.push_back({{joint.id, side}, 0, side == Side::kSupply ? pressure[joint.id] : 60e3 - pressure[joint.id], 1e5, true});
+        out.ends.push_back(
+            {{joint.id, side}, 0, side == Side::kSupply ? pressure[joint.id] : 60e3 - pressure[joint.id], 1e5, true});
     else
       out.ends.push_back({{joint.id, Side::kSingle}, 0, joint.at.y_m < -1 ? 0.0 : 62e3, 1e5, true});
   }

@@ -37,7 +37,8 @@ TEST_P(Themes, EveryInkReachesItsContrastOnEverySurfaceItIsUsedOn) {
   for (const QJsonValue& each : pairs) {
     const QJsonObject pair = each.toObject();
     const double ratio = contrast(token(GetParam(), pair["ink"].toString()), token(GetParam(), pair["on"].toString()));
-    EXPECT_GE(ratio, pair["least"].toDouble()) << pair["ink"].toString().toStdString() << " on " << pair["on"].toString().toStdString();
+    EXPECT_GE(ratio, pair["least"].toDouble())
+        << pair["ink"].toString().toStdString() << " on " << pair["on"].toString().toStdString();
     EXPECT_NEAR(ratio, pair["ratio"].toDouble(), 0.01);
   }
 }
@@ -97,7 +98,8 @@ TEST(Numbers, ResidualsAreNeverShownSmallerThanTheyAre) {
 TEST_P(Themes, StyleSheetIsReadWithoutComplaintAndLeavesNoNameOpen) {
   static QStringList complaints;
   complaints.clear();
-  const auto before = qInstallMessageHandler([](QtMsgType, const QMessageLogContext&, const QString& text) { complaints << text; });
+  const auto before =
+      qInstallMessageHandler([](QtMsgType, const QMessageLogContext&, const QString& text) { complaints << text; });
   applyTheme(*qApp, makeTheme(GetParam()));
   QPushButton button("x");
   button.ensurePolished();
@@ -111,7 +113,8 @@ TEST(Fonts, AreLatoWithDigitsOfOneWidth) {
   const QFont font = makeTheme(Mode::kLight).font(Text::kBody);
   ASSERT_EQ(QFontInfo(font).family(), "Lato") << "install fonts-lato";
   const QFontMetricsF metrics(font);
-  for (const QChar digit : QString("123456789")) EXPECT_NEAR(metrics.horizontalAdvance(digit), metrics.horizontalAdvance('0'), 1e-6);
+  for (const QChar digit : QString("123456789"))
+    EXPECT_NEAR(metrics.horizontalAdvance(digit), metrics.horizontalAdvance('0'), 1e-6);
 }
 
 TEST(Holder, TellsOfAChangeOnceAndOfNoChangeNever) {
@@ -153,4 +156,3 @@ TEST(TextTabs, KeepTheirWidthsWhenTheChosenOneTurnsBold) {
 
 }  // namespace
 }  // namespace ebbline::theme
-
