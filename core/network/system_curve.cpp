@@ -26,6 +26,21 @@ double endFlow(const PumpLaw& pump) {
   return low;
 }
 
+/// Where one pump works in a solved state, without telling everything else.
+HeadFlowPoint pumpPoint(const Network& network, const State& state, int pump) {
+  for (std::size_t e = 0; e < network.edges.size(); ++e) {
+    const Edge& edge = network.edges[e];
+    for (int i = edge.first_element; i < edge.first_element + edge.num_elements; ++i) {
+      const Element& element = network.elements[static_cast<std::size_t>(i)];
+      if (element.kind != Element::Kind::kPump || element.pump != pump) continue;
+      const double flow = element.reversed ? -state.edge_flow_m3s[e] : state.edge_flow_m3s[e];
+      const PumpLaw& law = network.pumps[static_cast<std::size_t>(pump)];
+      return {flow, pressureAt(law, network.density_kg_m3, flow, state.speed)};
+    }
+  }
+  return {};
+}
+
 /// Scales a solved state to another speed: a good start, since most of the loop is nearly quadratic.
 void scaleTo(State& state, double speed) {
   const double ratio = speed / state.speed;
@@ -146,8 +161,8 @@ Traced systemCurve(Solver& solver, const Network& network, const Request& reques
     scaleTo(walking, speed);
     traced.summary = solver.solve(at_speed, walking, stop);
     if (!traced.summary.usable()) return traced;
-    const PumpResult there = resultsOf(network, at_speed, walking).pumps[static_cast<std::size_t>(pump)];
-    if (there.flow_m3s > 0 && there.pressure_pa > 0) solved.push_back({there.flow_m3s, there.pressure_pa});
+    const HeadFlowPoint there = pumpPoint(network, walking, pump);
+    if (there.flow_m3s > 0 && there.pressure_pa > 0) solved.push_back(there);
   }
   solved.push_back({now.flow_m3s, now.pressure_pa});
   std::sort(solved.begin(), solved.end(), [](const auto& a, const auto& b) { return a.flow_m3s < b.flow_m3s; });
@@ -168,8 +183,7 @@ Traced controlPath(Solver& solver, const Network& network, const SpeedRule& rule
       request.terminals.push_back({loop::DemandKind::kRequest, terminal.design_flow_m3s * share, 1});
     traced.summary = solver.solve(request, state, stop);
     if (!traced.summary.usable()) return {{}, traced.summary};
-    const PumpResult there = resultsOf(network, request, state).pumps[static_cast<std::size_t>(pump)];
-    traced.curve.points.push_back({there.flow_m3s, there.pressure_pa});
+    traced.curve.points.push_back(pumpPoint(network, state, pump));
   }
   std::reverse(traced.curve.points.begin(), traced.curve.points.end());
   return traced;

@@ -16,8 +16,11 @@ using quantity::UnitSystem;
 namespace {
 
 QString withUnit(double fileValue, Quantity quantity, UnitSystem units) {
+  // SI shows what the file says; converted numbers are rounded to what is usual for the quantity.
   const std::string number =
-      quantity::formatForEditing(quantity::fileToBase(fileValue, quantity), quantity, units);
+      units == UnitSystem::kSi
+          ? quantity::formatForEditing(quantity::fileToBase(fileValue, quantity), quantity, units)
+          : quantity::format(quantity::fileToBase(fileValue, quantity), quantity, units);
   const std::string_view unit = quantity::unitLabel(quantity, units);
   return QString::fromStdString(number) + ' ' + QString::fromUtf8(unit.data(), static_cast<qsizetype>(unit.size()));
 }
@@ -132,7 +135,7 @@ QString ControlLine::words(const loop::Loop& loop, UnitSystem units) {
   QStringList each;
   for (const loop::Id id : control.sensors)
     if (const loop::Sensor* sensor = sensorOf(loop, id))
-      each << QString::fromStdString(sensor->tag) + ' ' + set(sensor->set_point_kpa);
+      each << QString::fromStdString(sensor->tag) + QStringLiteral(", ") + set(sensor->set_point_kpa);
   return tr("field sensor %1").arg(each.join(tr(" and ")));
 }
 

@@ -10,7 +10,8 @@
 namespace ebbline::page {
 
 namespace {
-constexpr int kZoneWidth = 96;     // px, the least at which name and number stand beside each other
+constexpr int kZoneWidth = 72;     // px, the least at which name and number stand beside each other
+constexpr int kZoneGap = 14;
 constexpr int kMostZoneRows = 2;   // further ones scroll
 constexpr int kZoneRow = 48;
 }  // namespace
@@ -21,7 +22,7 @@ LoadSliders::LoadSliders(PartLoadModel& model, const theme::ThemeHolder& holder,
   whole_->setFixedWidth(148);
   zoneGrid_ = new QGridLayout;
   zoneGrid_->setContentsMargins(0, 0, 0, 0);
-  zoneGrid_->setHorizontalSpacing(16);
+  zoneGrid_->setHorizontalSpacing(kZoneGap);
   zoneGrid_->setVerticalSpacing(4);
   zoneArea_ = new QWidget;
   zoneArea_->setLayout(zoneGrid_);
@@ -38,7 +39,7 @@ LoadSliders::LoadSliders(PartLoadModel& model, const theme::ThemeHolder& holder,
   terminal_ = new NamedSlider({});
   terminal_->setFixedWidth(220);
   terminal_->hide();
-  hint_ = new QLabel(tr("Bar in a terminal: how far its valve is open. Select a terminal for its own slider."));
+  hint_ = new QLabel(tr("Bar in a terminal: how far its valve is open. Select one for its own slider."));
   hint_->setProperty("look", "note");
   hint_->setWordWrap(true);
   mode_ = new theme::SegmentedSwitch({tr("by load"), tr("by position")}, holder);
@@ -93,7 +94,7 @@ void LoadSliders::buildZones() {
 void LoadSliders::placeZones() {
   const int space = width() - 40 - 148 - 24;
   const int count = static_cast<int>(zones_.size());
-  const int fitting = std::max(1, (space + 16) / (kZoneWidth + 16));
+  const int fitting = std::max(1, (space + kZoneGap) / (kZoneWidth + kZoneGap));
   const int columns = count == 0 ? 0 : std::min(count, fitting);
   if (columns == columns_ && columns > 0) return;
   columns_ = columns;

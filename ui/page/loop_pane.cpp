@@ -21,6 +21,8 @@ LoopPane::LoopPane(PartLoadModel& model, const theme::ThemeHolder& holder, QWidg
   chooser_->setFont(holder.theme().font(theme::Text::kTitle));
   share_ = new QLabel;
   share_->setProperty("look", "quiet");
+  share_->setAlignment(Qt::AlignRight | Qt::AlignVCenter);
+  share_->setFixedSize(150, 20);  // of one size: a new number must not lay the window out again
   canvas_ = new canvas::LoopCanvas(holder);
   sliders_ = new LoadSliders(model, holder);
   auto* rule = new QFrame;

@@ -45,7 +45,12 @@ NamedSlider::NamedSlider(const QString& name, bool strong, QWidget* parent) : QW
   if (strong) value_->setProperty("look", "strong");
   label_->setMinimumWidth(0);
   label_->setSizePolicy(QSizePolicy::Ignored, QSizePolicy::Preferred);
-  value_->setAlignment(Qt::AlignRight);
+  label_->setFixedHeight(20);
+  value_->ensurePolished();
+  // Of one size, so that a new number does not lay the window out again while the slider moves.
+  value_->setFixedSize(value_->fontMetrics().horizontalAdvance(QStringLiteral("100 %")) + 6, 20);
+  label_->setAlignment(Qt::AlignLeft | Qt::AlignVCenter);
+  value_->setAlignment(Qt::AlignRight | Qt::AlignVCenter);
   auto* words = new QHBoxLayout;
   words->setSpacing(4);
   words->addWidget(label_, 1);

@@ -15,7 +15,10 @@ PartLoadPage::PartLoadPage(PartLoadModel& model, const theme::ThemeHolder& holde
   heading->setProperty("look", "title");
   count_ = new QLabel;
   count_->setProperty("look", "quiet");
-  underFirst_ = new QCheckBox(tr("under-supplied first"));
+  count_->setFixedSize(200, 20);
+  underFirst_ = new QPushButton(tr("under-supplied first"));
+  underFirst_->setProperty("look", "pill");
+  underFirst_->setCheckable(true);
   underFirst_->setChecked(true);
   table_ = new TerminalTable(holder);
   table_->setObjectName("terminalTable");
@@ -38,13 +41,14 @@ PartLoadPage::PartLoadPage(PartLoadModel& model, const theme::ThemeHolder& holde
   split->addWidget(below);
   split->setStretchFactor(0, 11);
   split->setStretchFactor(1, 9);
+  split->setSizes({430, 330});
   auto* column = new QVBoxLayout(this);
   column->setContentsMargins(24, 12, 24, 8);
   column->setSpacing(12);
   column->addWidget(control_);
   column->addWidget(split, 1);
 
-  connect(underFirst_, &QCheckBox::toggled, table_->terminals(), &TerminalTableModel::setUnderFirst);
+  connect(underFirst_, &QPushButton::toggled, table_->terminals(), &TerminalTableModel::setUnderFirst);
   connect(table_, &TerminalTable::picked, this, &PartLoadPage::picked);
   connect(&model_, &PartLoadModel::groundChanged, this, &PartLoadPage::showGround);
   connect(&model_, &PartLoadModel::networkChanged, this, [this] {

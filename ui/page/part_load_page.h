@@ -1,7 +1,7 @@
 #pragma once
 // Part load: what happens as valves close? Control above, head and flow, the table of terminals below.
 
-#include <QCheckBox>
+#include <QPushButton>
 #include <QLabel>
 #include <QTimer>
 #include <QWidget>
@@ -36,7 +36,7 @@ class PartLoadPage : public QWidget {
   ControlLine* control_ = nullptr;
   plot::HeadFlowPlot* plot_ = nullptr;
   QLabel* count_ = nullptr;
-  QCheckBox* underFirst_ = nullptr;
+  QPushButton* underFirst_ = nullptr;
   TerminalTable* table_ = nullptr;
 };
 

@@ -4,6 +4,7 @@
 #include <numeric>
 
 #include <QHeaderView>
+#include <QPainter>
 #include <QResizeEvent>
 
 #include "ui/page/terminal_delegate.h"
@@ -164,7 +165,7 @@ QVariant TerminalTableModel::headerData(int section, Qt::Orientation orientation
   }
 }
 
-TerminalTable::TerminalTable(const theme::ThemeHolder& holder, QWidget* parent) : QTableView(parent) {
+TerminalTable::TerminalTable(const theme::ThemeHolder& holder, QWidget* parent) : QTableView(parent), holder_(holder) {
   model_ = new TerminalTableModel(this);
   setModel(model_);
   setItemDelegate(new TerminalDelegate(holder, this));
@@ -214,6 +215,17 @@ void TerminalTable::followSelection(bool scroll) {
     if (scroll) scrollTo(model_->index(row, 0));
   }
   quiet_ = false;
+}
+
+void TerminalTable::paintEvent(QPaintEvent* event) {
+  QTableView::paintEvent(event);
+  if (!hasFocus()) return;
+  QPainter painter(viewport());
+  painter.setPen(QPen(holder_.theme().colours.focus, 2));
+  const QRect row = currentIndex().isValid() ? visualRect(currentIndex()) : QRect();
+  const QRect ring = row.isValid() ? QRect(0, row.top(), viewport()->width(), row.height()) : viewport()->rect();
+  painter.setRenderHint(QPainter::Antialiasing);
+  painter.drawRoundedRect(QRectF(ring).adjusted(1, 1, -1, -1), 3, 3);
 }
 
 void TerminalTable::resizeEvent(QResizeEvent* event) {

@@ -63,10 +63,12 @@ class TerminalTable : public QTableView {
   void picked(ebbline::loop::Id id);
 
  protected:
+  void paintEvent(QPaintEvent* event) override;
   void resizeEvent(QResizeEvent* event) override;
 
  private:
   void followSelection(bool scroll);
+  const theme::ThemeHolder& holder_;
   TerminalTableModel* model_ = nullptr;
   loop::Id selected_ = 0;
   bool quiet_ = false;

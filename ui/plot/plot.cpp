@@ -42,7 +42,7 @@ Plot::Plot(const theme::ThemeHolder& holder, QWidget* parent) : QChartView(paren
   chart->setAnimationOptions(QChart::NoAnimation);
   chart->setMargins({});
   chart->setBackgroundRoundness(0);
-  chart->setPlotAreaBackgroundVisible(true);
+  chart->setBackgroundVisible(false);  // drawBackground() paints both grounds
   setChart(chart);
   setRenderHint(QPainter::Antialiasing);
   setFrameShape(QFrame::NoFrame);
@@ -56,10 +56,6 @@ Plot::Plot(const theme::ThemeHolder& holder, QWidget* parent) : QChartView(paren
 
 void Plot::restyle() {
   const theme::Colours& colours = look().colours;
-  chart()->setBackgroundBrush(colours.panel);
-  chart()->setBackgroundPen(Qt::NoPen);
-  chart()->setPlotAreaBackgroundBrush(colours.sheet);
-  setBackgroundBrush(colours.panel);
   axisX_->setLinePen(QPen(colours.rule, look().stroke.axis));
   axisY_->setLinePen(Qt::NoPen);
   for (QValueAxis* axis : {axisX_, axisY_}) axis->setGridLinePen(QPen(colours.grid, look().stroke.grid));
@@ -86,10 +82,15 @@ void Plot::resetZoom() { showRange(x_, y_); }
 void Plot::showRange(const Axis& x, const Axis& y) {
   shownX_ = x;
   shownY_ = y;
-  axisX_->setRange(x.low, x.high);
-  axisX_->setTickInterval(tickStep(x.high - x.low));
-  axisY_->setRange(y.low, y.high);
-  axisY_->setTickInterval(tickStep(y.high - y.low));
+  const auto show = [](QValueAxis& axis, const Axis& range) {
+    const double step = tickStep(range.high - range.low);
+    // The old step on the new range could mean thousands of grid lines for a moment.
+    axis.setTickInterval(std::max(step, axis.tickInterval()));
+    axis.setRange(range.low, range.high);
+    axis.setTickInterval(step);
+  };
+  show(*axisX_, x);
+  show(*axisY_, y);
   viewport()->update();
 }
 

@@ -3,7 +3,8 @@
 // in the units shown; nothing is computed here but pixels.
 
 #include <QChartView>
-#include <QPointer>
+#include <QHash>
+#include <QPixmap>
 #include <functional>
 #include <optional>
 #include <vector>
@@ -91,6 +92,7 @@ class Plot : public QChartView {
  protected:
   void resizeEvent(QResizeEvent* event) override;
   void paintEvent(QPaintEvent* event) override;
+  void drawBackground(QPainter* painter, const QRectF& rect) override;
   void drawForeground(QPainter* painter, const QRectF& rect) override;
   void mouseMoveEvent(QMouseEvent* event) override;
   void leaveEvent(QEvent* event) override;
@@ -120,8 +122,12 @@ class Plot : public QChartView {
   void paintAxes(QPainter& painter) const;
   void paintTrail(QPainter& painter) const;
   void paintTags(QPainter& painter) const;
+  /// Boxes of the tags on the x and the y axis; null without tags.
+  std::pair<QRectF, QRectF> tagBoxes() const;
   void paintMarks(QPainter& painter) const;
   void paintLabels(QPainter& painter) const;
+  /// A label with its halo; on the screen from a picture kept, on paper as outlines.
+  void paintHalo(QPainter& painter, QPointF baseline, const Line& line, const QColor& ground) const;
   void paintCrosshair(QPainter& painter) const;
   void paintCard(QPainter& painter) const;
   void paintWords(QPainter& painter) const;
@@ -140,6 +146,7 @@ class Plot : public QChartView {
   std::optional<QPointF> tags_;
   std::optional<Hovered> hovered_;
   std::optional<QPointF> pointer_;  // pixels
+  mutable QHash<QString, QPixmap> halos_;
   int stop_ = -1;                   // reached by arrow keys
   bool crosshair_ = false;
   PlotState state_ = PlotState::kEmpty;

@@ -35,6 +35,11 @@ struct Place {
 
 }  // namespace
 
+void Plot::drawBackground(QPainter* painter, const QRectF& rect) {
+  painter->fillRect(rect, look().colours.panel);
+  painter->fillRect(chart()->plotArea(), look().colours.sheet);
+}
+
 void Plot::drawForeground(QPainter* painter, const QRectF&) {
   painter->setRenderHint(QPainter::Antialiasing);
   paintTitles(*painter);
@@ -82,17 +87,22 @@ void Plot::paintAxes(QPainter& painter) const {
   const double middle = metrics.capHeight() / 2;
   painter.setFont(font);
   painter.setPen(look().colours.ink2);
+  const auto [tagX, tagY] = tagBoxes();
   const double stepX = tickStep(shownX_.high - shownX_.low);
   for (const double tick : ticksWithin(shownX_.low, shownX_.high, stepX)) {
     const QString text = theme::numberText(tick, decimalsOf(stepX));
     const double x = toPixels({tick, 0}).x();
-    painter.drawText(QPointF(x - metrics.horizontalAdvance(text) / 2, area.bottom() + 6 + metrics.ascent()), text);
+    const double wide = metrics.horizontalAdvance(text);
+    const QRectF box(x - wide / 2, area.bottom() + 6, wide, metrics.height());
+    if (!box.intersects(tagX)) painter.drawText(QPointF(box.left(), box.top() + metrics.ascent()), text);
   }
   const double stepY = tickStep(shownY_.high - shownY_.low);
   for (const double tick : ticksWithin(shownY_.low, shownY_.high, stepY)) {
     const QString text = theme::numberText(tick, decimalsOf(stepY));
     const double y = toPixels({0, tick}).y();
-    painter.drawText(QPointF(area.left() - 8 - metrics.horizontalAdvance(text), y + middle), text);
+    const double wide = metrics.horizontalAdvance(text);
+    const QRectF box(area.left() - 8 - wide, y - middle, wide, 2 * middle);
+    if (!box.intersects(tagY)) painter.drawText(box.bottomLeft(), text);
   }
   const QFont note = look().font(Text::kNote);
   const QFontMetricsF small(note);
@@ -116,31 +126,38 @@ void Plot::paintTrail(QPainter& painter) const {
   painter.restore();
 }
 
+std::pair<QRectF, QRectF> Plot::tagBoxes() const {
+  const bool drawn = state_ == PlotState::kIdle || state_ == PlotState::kStale;
+  const QRectF area = chart()->plotArea();
+  if (!tags_ || !drawn || !area.contains(toPixels(*tags_))) return {};
+  const QPointF at = toPixels(*tags_);
+  const QFontMetricsF metrics(look().font(Text::kLabel, 600));
+  const double high = 18 * look().textFactor;
+  const double wideX = metrics.horizontalAdvance(theme::roundedText(tags_->x(), 3)) + 12;
+  const double wideY = metrics.horizontalAdvance(theme::roundedText(tags_->y(), 3)) + 12;
+  return {QRectF(at.x() - wideX / 2, area.bottom() + 4, wideX, high),
+          QRectF(area.left() - 4 - wideY, at.y() - high / 2, wideY, high)};
+}
+
 void Plot::paintTags(QPainter& painter) const {
-  if (!tags_) return;
+  const auto [boxX, boxY] = tagBoxes();
+  if (boxX.isNull()) return;
   const theme::Colours& colours = look().colours;
   const QRectF area = chart()->plotArea();
   const QPointF at = toPixels(*tags_);
-  if (!area.contains(at)) return;
   painter.setPen(theme::dashedPen(colours.ink1, 1.25, {1.5, 3}));
   painter.drawLine(QPointF(area.left(), at.y()), at);
   painter.drawLine(at, QPointF(at.x(), area.bottom()));
-  const QFont font = look().font(Text::kLabel, 600);
-  const QFontMetricsF metrics(font);
-  painter.setFont(font);
-  const double f = look().textFactor;
-  const auto tag = [&](const QString& text, QPointF centreLeftOrTop, bool onX) {
-    const double width = metrics.horizontalAdvance(text) + 12;
-    const QRectF box = onX ? QRectF(centreLeftOrTop.x() - width / 2, centreLeftOrTop.y() + 4, width, 18 * f)
-                           : QRectF(centreLeftOrTop.x() - 4 - width, centreLeftOrTop.y() - 9 * f, width, 18 * f);
+  painter.setFont(look().font(Text::kLabel, 600));
+  const auto tag = [&](const QRectF& box, double value) {
     painter.setPen(Qt::NoPen);
     painter.setBrush(colours.ink1);
     painter.drawRoundedRect(box, 2, 2);
     painter.setPen(colours.sheet);
-    painter.drawText(box, Qt::AlignCenter, text);
+    painter.drawText(box, Qt::AlignCenter, theme::roundedText(value, 3));
   };
-  tag(theme::roundedText(tags_->x(), 3), {at.x(), area.bottom()}, true);
-  tag(theme::roundedText(tags_->y(), 3), {area.left(), at.y()}, false);
+  tag(boxX, tags_->x());
+  tag(boxY, tags_->y());
 }
 
 void Plot::paintMarks(QPainter& painter) const {
@@ -224,12 +241,38 @@ void Plot::paintLabels(QPainter& painter) const {
       if (!room.isFree(box) || box.right() > viewport()->width() || box.left() < area.left() - 2 ||
           box.top() < bounds.top() || box.bottom() > area.bottom() + 8)
         continue;
-      theme::drawHaloText(painter, place.baseline, line->label, font, line->labelInk,
-                          area.contains(box.center()) ? look().colours.sheet : look().colours.panel);
+      paintHalo(painter, place.baseline, *line, area.contains(box.center()) ? look().colours.sheet : look().colours.panel);
       room.take(box);
       break;
     }
   }
+}
+
+void Plot::paintHalo(QPainter& painter, QPointF baseline, const Line& line, const QColor& ground) const {
+  const QFont font = look().font(Text::kNote, line.labelWeight);
+  const int type = painter.device()->devType();
+  if (type != QInternal::Widget && type != QInternal::Pixmap && type != QInternal::Image)
+    return theme::drawHaloText(painter, baseline, line.label, font, line.labelInk, ground);
+  // Outlining and stroking the letters afresh for each frame took a third of the plot's painting.
+  constexpr int kMost = 200;
+  constexpr double kMargin = 3;
+  const double ratio = painter.device()->devicePixelRatioF() * std::max(1.0, painter.transform().m11());
+  const QString key = line.label + QChar(0x1f) + line.labelInk.name() + ground.name() + QString::number(font.weight()) +
+                      '/' + QString::number(font.pixelSize()) + '/' + QString::number(ratio);
+  const QFontMetricsF metrics(font);
+  const QPointF offset(kMargin, kMargin + std::ceil(metrics.ascent()));
+  if (halos_.size() > kMost) halos_.clear();
+  QPixmap& kept = halos_[key];
+  if (kept.isNull()) {
+    const QSizeF size(metrics.horizontalAdvance(line.label) + 2 * kMargin, metrics.height() + 2 * kMargin + 1);
+    kept = QPixmap((size * ratio).toSize() + QSize(1, 1));
+    kept.setDevicePixelRatio(ratio);
+    kept.fill(Qt::transparent);
+    QPainter once(&kept);
+    theme::drawHaloText(once, offset, line.label, font, line.labelInk, ground);
+  }
+  const QPointF corner = baseline - offset;
+  painter.drawPixmap(QPointF(std::round(corner.x()), std::round(corner.y())), kept);
 }
 
 void Plot::paintWords(QPainter& painter) const {

@@ -65,6 +65,7 @@ MainWindow::MainWindow(bool useSettings, QWidget* parent)
   setAcceptDrops(true);
   setMinimumSize(960, 600);
   resize(1440, 900);
+  applyLook();  // first: a widget takes the typeface that stands when it is made
   model_ = new page::PartLoadModel(document_, this);
   buildHeader();
   buildMenus();
@@ -87,7 +88,7 @@ void MainWindow::buildHeader() {
   menus_ = new QMenuBar;
   menus_->setNativeMenuBar(false);
   menus_->setSizePolicy(QSizePolicy::Maximum, QSizePolicy::Preferred);
-  header_->left()->addWidget(menus_);
+  header_->left()->addWidget(menus_, 0, Qt::AlignVCenter);
   QUndoStack& stack = document_.undoStack();
   const auto button = [&](theme::Icon icon, const QString& words, auto slot, auto signal, bool enabled) {
     auto* made = new theme::IconButton(icon, words, holder_);
@@ -116,7 +117,7 @@ void MainWindow::buildBody() {
   pages->setAttribute(Qt::WA_StyledBackground);
   pages->setFixedHeight(holder_.theme().space.toolbar);
   auto* pagesRow = new QHBoxLayout(pages);
-  pagesRow->setContentsMargins(16, 0, 16, 0);
+  pagesRow->setContentsMargins(2, 0, 16, 0);
   tabs_ = new theme::TextTabs(holder_);
   tabs_->addTab(tr("Part load"));
   pagesRow->addWidget(tabs_);
@@ -139,6 +140,7 @@ void MainWindow::buildBody() {
   column->addWidget(split, 1);
   column->addWidget(strip_);
   setCentralWidget(body);
+  pane_->canvas()->setFocus();
 }
 
 void MainWindow::connectParts() {
@@ -186,10 +188,16 @@ void MainWindow::setUnits(quantity::UnitSystem units) {
   page_->setUnits(units);
 }
 
-void MainWindow::setThemeMode(theme::Mode mode) {
-  holder_.setMode(mode);
+void MainWindow::applyLook() {
   if (auto* application = qobject_cast<QApplication*>(QCoreApplication::instance()))
     theme::applyTheme(*application, holder_.theme());
+}
+
+void MainWindow::setThemeMode(theme::Mode mode) {
+  if (holder_.theme().mode != mode) {
+    holder_.setMode(mode);
+    applyLook();
+  }
   themeButton_->setGlyph(mode == theme::Mode::kDark ? theme::Icon::kSun : theme::Icon::kMoon);
   themeActions_[mode == theme::Mode::kDark ? 1 : 0]->setChecked(true);
 }

@@ -74,6 +74,7 @@ class MainWindow : public QMainWindow {
   void dropEvent(QDropEvent* event) override;
 
  private:
+  void applyLook();
   void buildMenus();
   void buildFileMenu();
   void buildEditMenu();

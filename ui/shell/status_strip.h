@@ -1,14 +1,27 @@
 #pragma once
 // The line at the foot of the window: whether the numbers hold, and what was found.
 
-#include <QLabel>
-#include <QPushButton>
+#include <QAbstractButton>
 #include <QWidget>
 
 #include "ui/page/part_load_model.h"
 #include "ui/theme/theme.h"
 
 namespace ebbline::shell {
+
+/// Strong words with a chevron: what was found, and a click to it.
+class FindingButton : public QAbstractButton {
+  Q_OBJECT
+ public:
+  explicit FindingButton(const theme::ThemeHolder& holder, QWidget* parent = nullptr);
+  QSize sizeHint() const override;
+
+ protected:
+  void paintEvent(QPaintEvent* event) override;
+
+ private:
+  const theme::ThemeHolder& holder_;
+};
 
 class StatusStrip : public QWidget {
   Q_OBJECT
@@ -29,10 +42,9 @@ class StatusStrip : public QWidget {
   void showChecked();
   page::PartLoadModel& model_;
   const theme::ThemeHolder& holder_;
-  QLabel* solved_ = nullptr;
-  QLabel* residual_ = nullptr;
-  QLabel* checked_ = nullptr;
-  QPushButton* found_ = nullptr;
+  void put(QString& part, const QString& words);
+  QString solved_, residual_, checked_;  // painted here: labels would lay the window out at each picture
+  FindingButton* found_ = nullptr;
   loop::Id worst_ = 0;
   enum class Mark { kNone, kTick, kTriangle } mark_ = Mark::kNone;
 };

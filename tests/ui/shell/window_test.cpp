@@ -192,7 +192,7 @@ TEST_F(WindowTest, ALowerSetPointShowsWhoIsUnderSuppliedInStripAndTable) {
   ASSERT_GT(window_->model().picture()->under_supplied, 0);
   EXPECT_TRUE(window_->strip()->text().contains("under-supplied")) << window_->strip()->text().toStdString();
   EXPECT_NE(cell(0, page::TerminalTableModel::kShortfall), "none");
-  auto* found = window_->strip()->findChild<QPushButton*>();
+  auto* found = window_->strip()->findChild<FindingButton*>();
   test::click(found, found->rect().center());
   EXPECT_EQ(table().selected(), table().terminals()->idAt(0));
 }
