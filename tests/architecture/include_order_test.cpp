@@ -75,6 +75,7 @@ TEST(SourceRules, AModuleOutsideTheListIsCaught) {
 
 TEST(SourceRules, APlaceOutsideTheRepositoryIsCaught) {
   expectOneBreach("resources/note.md", std::string("see ..") + "/shared/design\n", "outside the repository");
+  expectOneBreach("resources/note.md", std::string("see /wo") + "rk/design\n", "outside the repository");
 }
 
 TEST(SourceRules, AnIncludeNotWrittenFromTheRootIsCaught) {
