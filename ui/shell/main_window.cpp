@@ -119,6 +119,7 @@ void MainWindow::buildBody() {
   auto* pagesRow = new QHBoxLayout(pages);
   pagesRow->setContentsMargins(2, 0, 16, 0);
   tabs_ = new theme::TextTabs(holder_);
+  tabs_->setAccessibleName(tr("Pages"));
   tabs_->addTab(tr("Part load"));
   pagesRow->addWidget(tabs_);
   pagesRow->addStretch(1);

@@ -16,7 +16,7 @@ struct Material {
   network::Network network;
   network::PartLoadGround ground;
   network::PartLoadPicture picture;
-  std::vector<study::SweepRow> rows;
+  std::vector<study::SweepRow> rows, state_rows;
   std::optional<double> method_difference;
 };
 
@@ -29,6 +29,11 @@ std::shared_ptr<Material> solveAfresh(std::shared_ptr<const loop::Loop> loop, co
   material->ground = solver.ground(request.speed, stop);
   material->picture = solver.picture(request, material->ground, stop);
   material->rows = study::sweep(*material->loop, material->network, {}, stop);
+  if (!material->loop->load_states.empty()) {
+    study::SweepOptions named;
+    named.named_states = true;
+    material->state_rows = study::sweep(*material->loop, material->network, named, stop);
+  }
   const network::SecondOpinion opinion = network::secondOpinion(network, request, stop);
   if (opinion.usable()) material->method_difference = opinion.difference.relative;
   return material;
@@ -59,6 +64,7 @@ void MainWindow::writeReportTo(const QString& path) {
       content.ground = &material->ground;
       content.picture = &material->picture;
       content.rows = material->rows;
+      content.state_rows = material->state_rows;
       content.method_difference = material->method_difference;
       content.units = units;
       const QString error = material->picture.summary.usable()
