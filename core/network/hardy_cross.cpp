@@ -200,7 +200,6 @@ void Attempt::fill(State& state) const {
     const int e = laws_.edgeOfTerminal(static_cast<int>(t));
     state.throttled[t] = e >= 0 && hold[e] == Hold::kAlong;
   }
-  state.friction_memory.clear();
   state.warm = false;
 }
 

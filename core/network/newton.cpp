@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <limits>
 
 namespace ebbline::network {
 
@@ -115,7 +116,7 @@ void Newton::takeStep() {
   for (std::size_t k = 0; k < pressure_.size(); ++k) pressure_[k] += share_ * change_[k];
   const double slack = 0.01 * tolerance_.pressure * pressureScale();
   flips_ = 0;
-  worst_surplus_ = 0;
+  worst_surplus_ = worst_shift_ = largest_flow_ = 0;
   worst_edge_ = -1;
   system_.clear();
   for (std::size_t k = 0; k < draw_.size(); ++k) right_[k] = -draw_[k];
@@ -124,8 +125,11 @@ void Newton::takeStep() {
     if (rows_[e].standing == Standing::kShut) continue;
     if (!moveEdge(e, slack)) ++flips_;
     assembleEdge(e);
-    if (std::abs(rows_[e].surplus) <= worst_surplus_) continue;
-    worst_surplus_ = std::abs(rows_[e].surplus);
+    const Row& row = rows_[e];
+    largest_flow_ = std::max(largest_flow_, std::abs(row.flow));
+    worst_shift_ = std::max(worst_shift_, std::abs(row.surplus * row.conductance));
+    if (std::abs(row.surplus) <= worst_surplus_) continue;
+    worst_surplus_ = std::abs(row.surplus);
     worst_edge_ = e;
   }
 }
@@ -168,15 +172,29 @@ bool Newton::tapsSettled() {
   return true;
 }
 
+/// A purely quadratic law has no slope at rest: where almost nothing flows, a surplus within tolerance may still stand
+/// for a flow that matters. Rounds then go on until the flow is settled too, or rounding keeps it from settling.
+bool Newton::flowsSettled() {
+  constexpr double kRelative = 1e-9;
+  constexpr double kStandsStill = 1e-3;  // of the flow asked for by design: below it flows need not be relative
+  constexpr double kStalled = 0.7;       // such a flow halves in every round until rounding stops it
+  if (worst_shift_ <= kRelative * std::max(largest_flow_, kStandsStill * reference_flow_)) return true;
+  const bool stalled = worst_shift_ > kStalled * last_shift_;
+  last_shift_ = worst_shift_;
+  return stalled;
+}
+
 bool Newton::settled() {
   const bool taps = !border_.active() || tapsSettled();
-  return taps && flips_ == 0 && share_ == 1 && worst_surplus_ <= tolerance_.pressure * pressureScale();
+  return taps && flips_ == 0 && share_ == 1 && worst_surplus_ <= tolerance_.pressure * pressureScale() &&
+         flowsSettled();
 }
 
 void Newton::rounds(const std::stop_token& stop) {
   best_ = 0;
   rounds_without_gain_ = 0;
   share_ = 1;
+  last_shift_ = std::numeric_limits<double>::infinity();
   if (border_.active()) tapsSettled();
   assemble();
   for (; summary_.rounds < tolerance_.most_rounds;) {

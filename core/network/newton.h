@@ -50,6 +50,7 @@ class Newton {
   void assembleEdge(int edge);
   bool settled();
   bool tapsSettled();
+  bool flowsSettled();
   void watchProgress();
   double pressureScale() const;
 
@@ -103,6 +104,9 @@ class Newton {
   double least_slope_ = 0;
   double worst_surplus_ = 0;  // largest |surplus| of an open edge
   int worst_edge_ = -1;
+  double worst_shift_ = 0;  // largest flow that a surplus would still drive [m³/s]
+  double last_shift_ = 0;   // the same when flowsSettled() was asked before
+  double largest_flow_ = 0;
   int flips_ = 0;     // edges that changed their standing in the last step
   double share_ = 1;  // of the full step
   double best_ = 0;

@@ -174,7 +174,7 @@ void Newton::start(const Request& request, const State& state) {
   if (border_.active())
     speed_squared_ = std::clamp(speed_squared_, border_.least(), std::max(border_.least(), border_.most()));
   const double pumps = laws_.pumpPressure(speed_squared_);
-  constexpr double kFlat = 1e-7;  // a slope this small against the whole loop's counts as none
+  constexpr double kFlat = 1e-8;  // a slope this small against the whole loop's counts as none
   least_slope_ = kFlat * (pumps > 0 ? pumps : 1e4) / reference_flow_;
   warm ? warmStart(state) : coldStart();
 }

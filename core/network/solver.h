@@ -30,8 +30,8 @@ struct TapPair {
 /// What sets the common speed of the pumps. The network knows rules, never a strategy's name.
 struct SpeedRule {
   enum class Kind {
-    kFixed,          ///< speed is given.
-    kHoldPressure,   ///< lowest speed at which every tap pair is at or above its set-point, within the bounds.
+    kFixed,         ///< speed is given.
+    kHoldPressure,  ///< lowest speed at which every tap pair is at or above its set-point, within the bounds.
   };
   Kind kind = Kind::kFixed;
   double speed = 1;  ///< kFixed: relative to reference speed.
@@ -51,17 +51,16 @@ struct State {
   std::vector<double> edge_flow_m3s;
   double speed = 1;
   // Warm-start memory of the solver; not part of the answer.
-  std::vector<double> friction_memory;
   std::vector<char> throttled;  ///< Per terminal: its valve is holding the requested flow.
   bool warm = false;
 };
 
 enum class Ended {
   kNotCalled,
-  kConverged,      ///< Every residual within tolerance; the state is the answer.
-  kNotConverged,   ///< Limit of rounds; the state is the last iterate, do not use it.
-  kRefused,        ///< Nothing computed: the request cannot be met by any flow; see remark.
-  kCancelled,      ///< Stop was asked for; the state is the last iterate, do not use it.
+  kConverged,     ///< Every residual within tolerance; the state is the answer.
+  kNotConverged,  ///< Limit of rounds; the state is the last iterate, do not use it.
+  kRefused,       ///< Nothing computed: the request cannot be met by any flow; see remark.
+  kCancelled,     ///< Stop was asked for; the state is the last iterate, do not use it.
 };
 
 /// Which bound, if any, kept the speed from its rule.
@@ -72,12 +71,12 @@ struct Summary {
   Ended ended = Ended::kNotCalled;
   std::string why = "not solved yet";
   int rounds = 0;
-  double flow_residual = 0;          ///< Largest imbalance at a node / largest flow.
+  double flow_residual = 0;  ///< Largest imbalance at a node / largest flow.
   int flow_residual_node = -1;
-  double pressure_residual = 0;      ///< Largest sum round a fundamental loop / pump pressure.
-  int pressure_residual_edge = -1;   ///< The edge closing that loop.
+  double pressure_residual = 0;     ///< Largest sum round a fundamental loop / pump pressure.
+  int pressure_residual_edge = -1;  ///< The edge closing that loop.
   SpeedBound bound = SpeedBound::kNone;
-  int governing_tap = -1;            ///< kHoldPressure: the tap pair that sets the speed.
+  int governing_tap = -1;  ///< kHoldPressure: the tap pair that sets the speed.
   std::optional<text::Remark> remark;
   bool usable() const { return ended == Ended::kConverged; }
 };

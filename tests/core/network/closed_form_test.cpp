@@ -57,7 +57,9 @@ void expectFlows(const Answer& answer, const std::vector<double>& flows_l_s) {
     EXPECT_NEAR(1000 * answer.results.terminals[t].delivered_m3s, flows_l_s[t], 1e-6) << "terminal " << t + 1;
 }
 
-double pumpKpa(const Answer& answer) { return answer.results.pumps.at(0).pressure_pa / 1000; }
+double pumpKpa(const Answer& answer) {
+  return answer.results.pumps.at(0).pressure_pa / 1000;
+}
 
 const std::vector<double> kOpen(4, -1.0);
 const std::vector<double> kOnlyFour{0, 0, 0, -1};
