@@ -58,7 +58,7 @@ LoopPane::LoopPane(PartLoadModel& model, const theme::ThemeHolder& holder, QWidg
     if (!model_.network()) canvas_->clearResults();
   });
   connect(&model_, &PartLoadModel::pictureChanged, this, &LoopPane::showPicture);
-  if (!model_.document().isEmpty()) showLoop();
+  showLoop();
 }
 
 QString LoopPane::stateName() const {
@@ -91,6 +91,9 @@ void LoopPane::fillStates() {
 }
 
 void LoopPane::showLoop() {
+  const bool drawn = !model_.document().isEmpty();
+  chooser_->setVisible(drawn);
+  sliders_->setVisible(drawn);
   chooser_->menu()->clear();
   canvas_->clearResults();
   canvas_->setLoop(model_.loop());

@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include <QChart>
+#include <QGraphicsLayout>
 #include <QKeyEvent>
 #include <QLineSeries>
 #include <QMouseEvent>
@@ -174,6 +175,7 @@ void Plot::layOut() {
   const QRectF whole(QPointF(0, 0), QSizeF(viewport()->size()));
   chart()->resize(whole.size());
   chart()->setPlotArea(whole.marginsRemoved({margins.left(), margins.top(), margins.right(), margins.bottom()}));
+  chart()->layout()->activate();  // else axis and grid keep the old size until the next event
 }
 
 void Plot::resizeEvent(QResizeEvent* event) {

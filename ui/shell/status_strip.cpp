@@ -71,7 +71,8 @@ void StatusStrip::refresh() {
     put(solved_, tr("not solved: %1").arg(QString::fromStdString(picture->summary.why)));
     mark_ = Mark::kTriangle;
   } else {
-    put(solved_, tr("solved %1 ms").arg(theme::roundedText(picture->solve_ms, 2)));
+    put(solved_, picture->solve_ms < 0.01 ? tr("solved in under 0.01 ms")
+                                         : tr("solved %1 ms").arg(theme::roundedText(picture->solve_ms, 2)));
     const network::Summary& summary = picture->summary;
     const bool good = summary.flow_residual <= kMostResidual && summary.pressure_residual <= kMostResidual;
     put(residual_, good ? tr("flow residual %1").arg(theme::residualText(summary.flow_residual))
