@@ -7,6 +7,7 @@
 #include "app/loop_source.h"
 #include "app/verb.h"
 #ifdef EBBLINE_WITH_UI
+#include <cstdio>
 #include <filesystem>
 
 #include <QApplication>
@@ -56,6 +57,12 @@ LoopOptions withState(const LoopOptions& options, const loop::Loop& loop) {
   return chosen;
 }
 
+// Qt warns where there is no login session (a server, a container); nothing here uses what it looks for.
+void tellQtMessage(QtMsgType type, const QMessageLogContext&, const QString& message) {
+  if (type == QtWarningMsg && message.startsWith(QStringLiteral("QStandardPaths: XDG_RUNTIME_DIR"))) return;
+  std::fputs((message + QLatin1Char('\n')).toLocal8Bit().constData(), stderr);
+}
+
 int draw(const Options& options, const OpenedLoop& opened, const report::ReportContent& content, Streams streams) {
   std::error_code error;
   const std::filesystem::path folder = std::filesystem::path(options.file).parent_path();
@@ -63,6 +70,7 @@ int draw(const Options& options, const OpenedLoop& opened, const report::ReportC
   if (error)
     return refuse(remark(text::Code::kCommandCannotWrite, {options.file, error.message()}), kNoAccess, streams);
   qputenv("QT_QPA_PLATFORM", "offscreen");  // paper needs no display
+  qInstallMessageHandler(tellQtMessage);
   int argc = 1;
   char name[] = "ebbline";
   char* argv[] = {name, nullptr};
@@ -85,9 +93,7 @@ int makeReport(const Options& options, Streams streams) {
 
   network::PartLoadSolver solver(std::make_shared<const network::Network>(opened.network));
   const network::PartLoadGround ground = solver.ground(request->speed);
-  // Printed numbers come from the standard cold start: a solver that has seen nothing before.
-  network::PartLoadSolver cold(std::make_shared<const network::Network>(opened.network));
-  const network::PartLoadPicture picture = cold.picture(*request, ground);
+  const network::PartLoadPicture picture = solver.picture(*request, ground);  // its first, so from the cold start
   if (!picture.summary.usable() || !ground.usable) {
     streams.err << "ebbline: no report: " << (picture.summary.usable() ? ground.why : picture.summary.why) << "\n";
     return kNotUsable;
@@ -104,6 +110,9 @@ int makeReport(const Options& options, Streams streams) {
   content.ground = &ground;
   content.picture = &picture;
   content.rows = study::sweep(opened.loop, opened.network);
+  study::SweepOptions states;
+  states.named_states = true;
+  content.state_rows = study::sweep(opened.loop, opened.network, states);
   if (opinion.usable()) content.method_difference = opinion.difference.relative;
   content.units = options.output.units();
   return draw(options, opened, content, streams);

@@ -61,7 +61,8 @@ void printTerminals(const network::Results& results, UnitSystem units, std::ostr
   if (short_count == 0)
     out << "No terminal is under-supplied.\n";
   else
-    out << std::to_string(short_count) << (short_count == 1 ? " terminal is" : " terminals are") << " under-supplied.\n";
+    out << std::to_string(short_count) << (short_count == 1 ? " terminal is" : " terminals are")
+        << " under-supplied.\n";
 }
 
 void printParts(const network::Results& results, UnitSystem units, std::ostream& out) {

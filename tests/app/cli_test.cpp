@@ -238,8 +238,8 @@ TEST(CommandLine, ConvertGivesAFileThatConvertsToItself) {
   for (const char* name : {"office", "school", "laboratory", "closed-form"}) {
     const std::string once = folder.file("once.ebbline");
     EXPECT_EQ(said({"convert", sampleFile(name), "-o", once}).code, kDone);
-    EXPECT_EQ(said({"convert", once}).out, textOf(once)) << name;
-    EXPECT_EQ(textOf(sampleFile(name)), textOf(once)) << name << ": samples are kept as the writer writes them";
+    EXPECT_TRUE(said({"convert", once}).out == textOf(once)) << name;
+    EXPECT_TRUE(textOf(sampleFile(name)) == textOf(once)) << name << ": samples are kept as the writer writes them";
   }
 }
 
@@ -257,7 +257,7 @@ TEST(CommandLine, SamplesAreListedAndWritten) {
   EXPECT_EQ(list.code, kDone);
   for (const char* name : {"office", "school", "laboratory", "closed-form", "campus"})
     EXPECT_THAT(list.out, HasSubstr(name));
-  EXPECT_EQ(said({"sample", "school"}).out, textOf(sampleFile("school")));
+  EXPECT_TRUE(said({"sample", "school"}).out == textOf(sampleFile("school")));  // too long to print
   const Folder folder;
   const std::string campus = folder.file("campus.ebbline");
   EXPECT_EQ(said({"sample", "campus", "--terminals", "37", "-o", campus}).code, kDone);

@@ -78,6 +78,11 @@ TEST(SourceRules, APlaceOutsideTheRepositoryIsCaught) {
   expectOneBreach("resources/note.md", std::string("see /wo") + "rk/design\n", "outside the repository");
 }
 
+TEST(SourceRules, AFolderThatEndsLikeSuchAPlaceIsNone) {
+  EXPECT_TRUE(SeededTree("ui/page/a.h", std::string("#include \"ui/wo") + "rk/worker.h\"\n").breaches().empty());
+  expectOneBreach("ui/page/a.h", std::string("// see /wo") + "rk/notes\n", "outside the repository");
+}
+
 TEST(SourceRules, AnIncludeNotWrittenFromTheRootIsCaught) {
   expectOneBreach("core/loop/a.cpp", "#include \"loop.h\"\n", "repository root");
 }

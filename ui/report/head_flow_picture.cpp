@@ -1,6 +1,8 @@
 #include "ui/report/head_flow_picture.h"
 
 #include <algorithm>
+#include <cmath>
+#include <optional>
 
 #include <QCoreApplication>
 #include <QPainter>
@@ -82,13 +84,17 @@ class Painting {
       const QPointF foot = place(QPointF(x, 0));
       painter_.setPen(QPen(ink.grid, 0.75));
       painter_.drawLine(foot, QPointF(foot.x(), area_.top()));
-      text(foot + QPointF(0, 15), theme::numberText(x, plot::decimalsOf(step_x)), font_, ink.ink2, Qt::AlignHCenter);
+      const bool behind_tag = std::abs(foot.x() - place(what_.picture->operating).x()) < 28;
+      if (!behind_tag)
+        text(foot + QPointF(0, 15), theme::numberText(x, plot::decimalsOf(step_x)), font_, ink.ink2, Qt::AlignHCenter);
     }
     for (const double y : plot::ticksWithin(0, most_.y(), step_y)) {
       const QPointF left = place(QPointF(0, y));
+      const bool behind_tag = std::abs(left.y() - place(what_.picture->operating).y()) < 15;
       painter_.setPen(QPen(ink.grid, 0.75));
       painter_.drawLine(left, QPointF(area_.right(), left.y()));
-      text(left + QPointF(-7, 4), theme::numberText(y, plot::decimalsOf(step_y)), font_, ink.ink2, Qt::AlignRight);
+      if (!behind_tag)
+        text(left + QPointF(-7, 4), theme::numberText(y, plot::decimalsOf(step_y)), font_, ink.ink2, Qt::AlignRight);
     }
     painter_.setPen(QPen(ink.rule, 1));
     painter_.drawLine(area_.bottomLeft(), area_.bottomRight());
@@ -159,7 +165,9 @@ class Painting {
     double left = baseline.x();
     if (alignment & Qt::AlignRight) left -= width;
     if (alignment & Qt::AlignHCenter) left -= width / 2;
-    if (!free(QRectF(left - 2, baseline.y() - 10, width + 4, 13))) return;
+    const QRectF box(left - 3, baseline.y() - 11, width + 6, 15);
+    if (!free(box)) return;
+    painter_.fillRect(box, look_.colours.paper);
     text(baseline, words, font, ink, alignment);
   }
 
@@ -181,8 +189,7 @@ class Painting {
       label(*end + QPointF(5, 2), tr("loop now"), strong_, ink.ink1);
     if (const auto end = upperEnd(what_.ground->design_load))
       label(*end + QPointF(-6, -4), tr("design load"), strong_, ink.ink1, Qt::AlignRight);
-    if (!what_.ground->control.empty())
-      label(place(what_.ground->control.points.front()) + QPointF(6, -6), what_.control_words, strong_, series().label);
+    if (!what_.ground->control.empty()) controlLabel();
     const QString now_speed = theme::numberText(100 * what_.picture->pump_now.speed, 0);
     if (const auto end = upperEnd(what_.picture->pump_now))
       label(*end + QPointF(5, 4), tr("now %1 %").arg(now_speed), strong_, ink.ink1);
@@ -200,6 +207,21 @@ class Painting {
         label(*end + QPointF(0, -4), first ? tr("%1 % efficient").arg(share) : share, font_, ink.ink3,
               Qt::AlignHCenter);
       first = false;
+    }
+  }
+
+  // At the start of the path, over it or under it, or near its end: the first place that is free.
+  void controlLabel() {
+    const std::vector<HeadFlowPoint>& points = what_.ground->control.points;
+    const QPointF start = place(points.front());
+    const QPointF late = place(points[points.size() * 3 / 4]);
+    const double width = QFontMetricsF(strong_).horizontalAdvance(what_.control_words);
+    for (const QPointF& at : {start + QPointF(4, 18), start + QPointF(4, -9), late + QPointF(8, 16)}) {
+      const QRectF box(at.x() - 3, at.y() - 11, width + 6, 15);
+      const bool crossed = std::any_of(what_.picture->pump_now.points.begin(), what_.picture->pump_now.points.end(),
+                                       [&](const HeadFlowPoint& point) { return box.contains(place(point)); });
+      if (crossed || std::abs(box.center().y() - place(what_.picture->operating).y()) < 10) continue;
+      return label(at, what_.control_words, strong_, series().label);
     }
   }
 

@@ -21,6 +21,7 @@ constexpr int kPages = 3;
 constexpr std::size_t kMostTerminals = 36;  // rows that fit the page under its title
 constexpr double kLineBody = 20;            // px
 constexpr double kLineNote = 15;
+constexpr double kRow = 23;
 
 QString tr(const char* english) {
   return QCoreApplication::translate("report", english);
@@ -54,7 +55,7 @@ class Report {
     const QString title = QString::fromStdString(content_.loop->project.title);
     const double width = paper_.line({left(), y}, title, paper_.font(Text::kBody, 600), ink().ink1);
     QString subject = QString::fromStdString(content_.loop->project.subject);
-    subject += subject.isEmpty() ? tr("part load") : tr(" loop, part load");
+    subject += subject.isEmpty() ? tr("part load") : tr(", part load");
     paper_.line({left() + width + 10, y}, subject, paper_.font(Text::kBody), ink().ink2);
     paper_.line({right(), y}, tr("page %1 of %2").arg(page).arg(kPages), paper_.font(Text::kLabel), ink().ink2,
                 Qt::AlignRight);
@@ -92,7 +93,7 @@ class Report {
     double x = left() - 4;
     x += paper_.line({x, y + 72}, said.figure, figure, colour) + 6;
     x += paper_.line({x, y + 39}, said.unit, unit, colour);
-    x = std::max(x + 22, left() + 166);
+    x = std::max(x + 22, left() + 104);
     paper_.line({x, y + 21}, said.strong, paper_.font(Text::kTitle), ink().ink1);
     const double end =
         paper_.paragraph({x, y + 30}, right() - x, said.words, paper_.font(Text::kBody), ink().ink1, kLineBody);
@@ -140,10 +141,11 @@ class Report {
     foot();
   }
 
-  std::vector<Cell> sweepRow(const study::SweepRow& row) const {
+  // Numbers of a row from flow to shortfall.
+  std::vector<Cell> sweepCells(const study::SweepRow& row) const {
     const auto number = [this](double base, Quantity quantity) { return shownNumber(base, quantity, content_.units); };
     const QString none(theme::kEnDash);
-    std::vector<Cell> cells = {{theme::numberText(row.load_percent, 0)}};
+    std::vector<Cell> cells;
     if (!row.summary.usable()) {
       for (int i = 0; i < 6; ++i) cells.push_back({none});
       cells.push_back({tr("not solved"), true});
@@ -167,27 +169,55 @@ class Report {
     return cells;
   }
 
-  double sweepTable(double y) {
+  std::vector<Column> sweepColumns(double flow, double pressure, double speed, double power) const {
     const quantity::UnitSystem units = content_.units;
     const double width = right() - left();
-    const std::vector<Column> columns = {
-        {tr("load %"), 0.06 * width},
-        {tr("flow %1").arg(unitOf(Quantity::kFlow, units)), 0.17 * width},
-        {tr("pump pressure %1").arg(unitOf(Quantity::kPressure, units)), 0.345 * width},
-        {tr("head %1").arg(unitOf(Quantity::kHead, units)), 0.44 * width},
-        {tr("speed %"), 0.54 * width},
-        {tr("efficiency %"), 0.65 * width},
-        {tr("shaft power %1").arg(unitOf(Quantity::kPower, units)), 0.79 * width},
-        {tr("under-supplied"), width}};
+    return {{tr("flow %1").arg(unitOf(Quantity::kFlow, units)), flow * width},
+            {tr("pressure %1").arg(unitOf(Quantity::kPressure, units)), pressure * width},
+            {tr("head %1").arg(unitOf(Quantity::kHead, units)), (pressure + 0.09) * width},
+            {tr("speed %"), speed * width},
+            {tr("efficiency %"), (speed + 0.105) * width},
+            {tr("shaft power %1").arg(unitOf(Quantity::kPower, units)), power * width},
+            {tr("under-supplied"), width}};
+  }
+
+  double sweepTable(double y) {
+    std::vector<Column> columns = sweepColumns(0.17, 0.30, 0.50, 0.75);
+    columns.insert(columns.begin(), {tr("load %"), 0.06 * (right() - left())});
     std::vector<std::vector<Cell>> rows;
-    for (const study::SweepRow& row : content_.rows) rows.push_back(sweepRow(row));
-    return paintTable(paper_, y, columns, rows, 24);
+    for (const study::SweepRow& row : content_.rows) {
+      rows.push_back(sweepCells(row));
+      rows.back().insert(rows.back().begin(), {theme::numberText(row.load_percent, 0)});
+    }
+    return paintTable(paper_, y, columns, rows, kRow);
+  }
+
+  // As many load states of the file as fit above the foot.
+  void stateTable(double y) {
+    const double room = paper_.body().bottom() - 30 - y - 32 - 16;
+    const std::size_t fit = room > kRow ? static_cast<std::size_t>(room / kRow) : 0;
+    if (content_.state_rows.empty() || fit == 0) return;
+    y = section(y, 4, tr("The load states of the file; %1").arg(QString::fromStdString(content_.strategy)));
+    std::vector<Column> columns = sweepColumns(0.40, 0.515, 0.62, 0.765);
+    columns.erase(columns.begin() + 4);  // no room for the efficiency
+    columns.erase(columns.begin() + 2);  // nor for the head
+    columns.insert(columns.begin(), {tr("load state"), 0, true});
+    std::vector<std::vector<Cell>> rows;
+    for (const study::SweepRow& row : content_.state_rows) {
+      if (rows.size() == fit) break;
+      std::vector<Cell> cells = sweepCells(row);
+      cells.erase(cells.begin() + 4);
+      cells.erase(cells.begin() + 2);
+      cells.insert(cells.begin(), {QString::fromStdString(row.name)});
+      rows.push_back(std::move(cells));
+    }
+    paintTable(paper_, y - 6, columns, rows, kRow);
   }
 
   void partLoadPage() {
     double y =
         section(head(2) + 20, 2, tr("The pump in the state “%1”").arg(QString::fromStdString(content_.state_name)));
-    const QRectF box(left(), y, right() - left(), 390);
+    const QRectF box(left(), y, right() - left(), 370);
     HeadFlowPicture picture;
     picture.ground = content_.ground;
     picture.picture = content_.picture;
@@ -212,8 +242,10 @@ class Report {
       }
     const QString minimum = minimumFlowSentence(content_);
     if (!minimum.isEmpty()) notes << minimum;
-    paper_.paragraph({left(), y}, right() - left(), notes.join(QLatin1Char(' ')), paper_.font(Text::kNote), ink().ink2,
-                     kLineNote);
+    if (!notes.isEmpty())
+      y = paper_.paragraph({left(), y}, right() - left(), notes.join(QLatin1Char(' ')), paper_.font(Text::kNote),
+                           ink().ink2, kLineNote);
+    stateTable(y + 12);
     foot();
   }
 
@@ -245,7 +277,7 @@ class Report {
 
   void terminalPage() {
     double y =
-        section(head(3) + 20, 4, tr("Terminals in the state “%1”").arg(QString::fromStdString(content_.state_name)));
+        section(head(3) + 20, 5, tr("Terminals in the state “%1”").arg(QString::fromStdString(content_.state_name)));
     const quantity::UnitSystem units = content_.units;
     const double width = right() - left();
     const std::vector<Column> columns = {{tr("terminal"), 0, true},

@@ -28,6 +28,7 @@ struct ReportContent {
   const network::PartLoadGround* ground = nullptr;
   const network::PartLoadPicture* picture = nullptr;  ///< The state drawn; summary.usable().
   std::vector<study::SweepRow> rows;                  ///< The table, full load first.
+  std::vector<study::SweepRow> state_rows;            ///< The load states of the file; may be empty.
   std::optional<double> method_difference;            ///< Of the state drawn; absent = second method not available.
   quantity::UnitSystem units = quantity::UnitSystem::kSi;
 };

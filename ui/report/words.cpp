@@ -37,6 +37,19 @@ int rowsShort(const ReportContent& content) {
   }));
 }
 
+// " The pump runs at 71 % speed on 0.57 kW, against 1.85 kW at design load."
+QString pumpSentence(const ReportContent& content) {
+  const network::PumpResult& pump = content.picture->results.pumps.front();
+  const QString speed = percent(100 * pump.speed);
+  const study::SweepRow* full = rowNearest(content, 100);
+  if (!full || full->shaft_power_w <= 0) return tr(" The pump runs at %1 % speed.").arg(speed);
+  double power = 0;
+  for (const network::PumpResult& one : content.picture->results.pumps) power += one.shaft_power_w;
+  return tr(" The pump runs at %1 % speed on %2, against %3 at design load.")
+      .arg(speed, shownWithUnit(power, Quantity::kPower, content.units),
+           shownWithUnit(full->shaft_power_w, Quantity::kPower, content.units));
+}
+
 Headline shortInPicture(const ReportContent& content) {
   const network::PartLoadPicture& picture = *content.picture;
   const auto& worst = picture.results.terminals.at(static_cast<std::size_t>(picture.first_under_supplied));
@@ -49,6 +62,12 @@ Headline shortInPicture(const ReportContent& content) {
       tr("In the state drawn, with %1. %2 misses most: it asks for %3 and gets %4.")
           .arg(of(content.strategy), of(worst.tag), shownWithUnit(worst.requested_m3s, Quantity::kFlow, content.units),
                shownWithUnit(worst.delivered_m3s, Quantity::kFlow, content.units));
+  QStringList essential;
+  for (std::size_t t = 0; t < picture.results.terminals.size(); ++t)
+    if (picture.results.terminals[t].under_supplied && content.loop->terminals[t].essential)
+      essential << of(picture.results.terminals[t].tag);
+  if (!essential.isEmpty()) headline.words += tr(" Essential and short: %1.").arg(essential.join(QStringLiteral(", ")));
+  headline.words += pumpSentence(content);
   return headline;
 }
 

@@ -5,6 +5,7 @@
 #include <QStringList>
 
 #include "ui/report/report.h"
+#include "ui/theme/theme.h"
 
 namespace ebbline::report {
 
