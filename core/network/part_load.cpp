@@ -137,9 +137,8 @@ PartLoadGround PartLoadSolver::ground(const SpeedRule& rule, std::stop_token sto
   ground.limits = planeLimits(pump, density, ground.design_point);
   const double top = kTopOfCurves * ground.limits.pressure_pa;
   ground.design_load = systemCurve(tracer_, *network_, design, state, results, top, 0, 5, stop).curve;
-  const Traced path = rule.kind == SpeedRule::Kind::kFixed
-                          ? Traced{pumpCurve(pump, density, rule.speed), summary}
-                          : controlPath(tracer_, *network_, rule, 0, 14, stop);
+  const Traced path = rule.kind == SpeedRule::Kind::kFixed ? Traced{pumpCurve(pump, density, rule.speed), summary}
+                                                           : controlPath(tracer_, *network_, rule, 0, 14, stop);
   ground.control = path.curve;
   if (!path.usable()) ground.control_why = path.summary.why;
   return ground;

@@ -43,16 +43,16 @@ std::vector<Share> asLoads(const Network& network, const Results& results);
 /// What stays while terminals move: the ground of the head–flow plot under one speed rule.
 struct PartLoadGround {
   bool usable = false;
-  std::string why;                          ///< Reason when not usable.
+  std::string why;  ///< Reason when not usable.
   SpeedRule rule;
   double density_kg_m3 = 1000;
-  double design_flow_m3s = 0;               ///< Sum of the terminals' design flows.
-  HeadFlowPoint limits;                     ///< Of the plot's axes.
+  double design_flow_m3s = 0;  ///< Sum of the terminals' design flows.
+  HeadFlowPoint limits;        ///< Of the plot's axes.
   std::vector<HeadFlowCurve> pump_family;
   std::vector<EfficiencyLine> efficiency;
-  HeadFlowCurve control;                    ///< Empty: see control_why.
+  HeadFlowCurve control;  ///< Empty: see control_why.
   std::string control_why;
-  HeadFlowCurve design_load;                ///< The loop's curve with every terminal asking for its design flow.
+  HeadFlowCurve design_load;  ///< The loop's curve with every terminal asking for its design flow.
   HeadFlowPoint design_point;
 };
 
@@ -60,16 +60,16 @@ struct PartLoadGround {
 struct PartLoadPicture {
   Request request;
   State state;
-  Summary summary;             ///< usable() is checked before anything is drawn.
-  Results results;             ///< Empty unless usable.
-  HeadFlowCurve pump_now;      ///< Pump curve at the speed found.
-  HeadFlowCurve loop_now;      ///< Traced with the valves where they are; empty when there is no flow.
+  Summary summary;         ///< usable() is checked before anything is drawn.
+  Results results;         ///< Empty unless usable.
+  HeadFlowCurve pump_now;  ///< Pump curve at the speed found.
+  HeadFlowCurve loop_now;  ///< Traced with the valves where they are; empty when there is no flow.
   HeadFlowPoint operating;
   double delivered_m3s = 0;    ///< Sum over terminals.
   double delivered_share = 0;  ///< Of the design flow of all terminals.
   int under_supplied = 0;
   int first_under_supplied = -1;  ///< The one with the largest shortfall, index in terminals.
-  double solve_ms = 0;         ///< Of the state alone, without the curves.
+  double solve_ms = 0;            ///< Of the state alone, without the curves.
 };
 
 /// How the second method compares.

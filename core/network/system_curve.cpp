@@ -112,7 +112,8 @@ std::vector<EfficiencyLine> efficiencyLines(const PumpLaw& pump, double density_
   const int best_percent = static_cast<int>(std::floor(best * 100));
   // Every 10 % below the hill, every 4 % near its top, as height lines on a map.
   const auto wanted = [&](int percent) {
-    return percent <= best_percent && (percent % 10 == 0 ? percent >= 40 : percent > best_percent - 9 && percent % 4 == 0);
+    return percent <= best_percent &&
+           (percent % 10 == 0 ? percent >= 40 : percent > best_percent - 9 && percent % 4 == 0);
   };
   double before = pump.curve.efficiency(0, 1);
   for (int i = 1; i <= kSteps && static_cast<int>(lines.size()) < most; ++i) {

@@ -38,14 +38,20 @@ inline bool waitFor(const std::function<bool()>& done, int most_ms = 20000) {
 }
 
 /// Where a place of a widget is in its window.
-inline QPoint inWindow(const QWidget* widget, QPoint place) { return widget->mapTo(widget->window(), place); }
+inline QPoint inWindow(const QWidget* widget, QPoint place) {
+  return widget->mapTo(widget->window(), place);
+}
 
-inline QWindow* windowOf(const QWidget* widget) { return widget->window()->windowHandle(); }
+inline QWindow* windowOf(const QWidget* widget) {
+  return widget->window()->windowHandle();
+}
 
 inline void press(const QWidget* widget, QPoint place) {
   QTest::mousePress(windowOf(widget), Qt::LeftButton, {}, inWindow(widget, place));
 }
-inline void moveTo(const QWidget* widget, QPoint place) { QTest::mouseMove(windowOf(widget), inWindow(widget, place)); }
+inline void moveTo(const QWidget* widget, QPoint place) {
+  QTest::mouseMove(windowOf(widget), inWindow(widget, place));
+}
 inline void release(const QWidget* widget, QPoint place) {
   QTest::mouseRelease(windowOf(widget), Qt::LeftButton, {}, inWindow(widget, place));
 }

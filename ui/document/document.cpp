@@ -29,7 +29,9 @@ std::vector<text::Remark> Document::open(const QString& path) {
   return takeReading(loop::readLoopFile(path.toStdString()), path);
 }
 
-std::vector<text::Remark> Document::openText(std::string_view text) { return takeReading(loop::readLoop(text), {}); }
+std::vector<text::Remark> Document::openText(std::string_view text) {
+  return takeReading(loop::readLoop(text), {});
+}
 
 std::vector<text::Remark> Document::takeReading(loop::Reading reading, const QString& path) {
   if (reading.usable()) {

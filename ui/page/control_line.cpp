@@ -18,9 +18,8 @@ namespace {
 QString withUnit(double fileValue, Quantity quantity, UnitSystem units) {
   // SI shows what the file says; converted numbers are rounded to what is usual for the quantity.
   const std::string number =
-      units == UnitSystem::kSi
-          ? quantity::formatForEditing(quantity::fileToBase(fileValue, quantity), quantity, units)
-          : quantity::format(quantity::fileToBase(fileValue, quantity), quantity, units);
+      units == UnitSystem::kSi ? quantity::formatForEditing(quantity::fileToBase(fileValue, quantity), quantity, units)
+                               : quantity::format(quantity::fileToBase(fileValue, quantity), quantity, units);
   const std::string_view unit = quantity::unitLabel(quantity, units);
   return QString::fromStdString(number) + ' ' + QString::fromUtf8(unit.data(), static_cast<qsizetype>(unit.size()));
 }
@@ -108,10 +107,14 @@ void ControlLine::setUnits(UnitSystem units) {
 
 QString ControlLine::seriesKey(loop::Strategy strategy) {
   switch (strategy) {
-    case loop::Strategy::kConstantSpeed: return QStringLiteral("constant_speed");
-    case loop::Strategy::kDpPump: return QStringLiteral("dp_pump");
-    case loop::Strategy::kDpHeaders: return QStringLiteral("dp_headers");
-    case loop::Strategy::kFieldSensor: return QStringLiteral("field_sensor");
+    case loop::Strategy::kConstantSpeed:
+      return QStringLiteral("constant_speed");
+    case loop::Strategy::kDpPump:
+      return QStringLiteral("dp_pump");
+    case loop::Strategy::kDpHeaders:
+      return QStringLiteral("dp_headers");
+    case loop::Strategy::kFieldSensor:
+      return QStringLiteral("field_sensor");
   }
   return QStringLiteral("constant_speed");
 }
@@ -128,9 +131,12 @@ QString ControlLine::words(const loop::Loop& loop, UnitSystem units) {
   switch (control.strategy) {
     case loop::Strategy::kConstantSpeed:
       return tr("constant speed, %1").arg(withUnit(control.speed_percent, Quantity::kPercent, units));
-    case loop::Strategy::kDpPump: return tr("constant DP at the pump, %1").arg(set(control.set_point_kpa));
-    case loop::Strategy::kDpHeaders: return tr("constant DP at the headers, %1").arg(set(control.set_point_kpa));
-    case loop::Strategy::kFieldSensor: break;
+    case loop::Strategy::kDpPump:
+      return tr("constant DP at the pump, %1").arg(set(control.set_point_kpa));
+    case loop::Strategy::kDpHeaders:
+      return tr("constant DP at the headers, %1").arg(set(control.set_point_kpa));
+    case loop::Strategy::kFieldSensor:
+      break;
   }
   QStringList each;
   for (const loop::Id id : control.sensors)

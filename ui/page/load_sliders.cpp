@@ -10,16 +10,17 @@
 namespace ebbline::page {
 
 namespace {
-constexpr int kZoneWidth = 72;     // px, the least at which name and number stand beside each other
-constexpr int kZoneGap = 14;
-constexpr int kMostZoneRows = 2;   // further ones scroll
+constexpr int kWholeWidth = 120;  // px
+constexpr int kZoneWidth = 80;    // px, the least at which name and number stand beside each other
+constexpr int kZoneGap = 12;
+constexpr int kMostZoneRows = 2;  // further ones scroll
 constexpr int kZoneRow = 48;
 }  // namespace
 
 LoadSliders::LoadSliders(PartLoadModel& model, const theme::ThemeHolder& holder, QWidget* parent)
     : QWidget(parent), model_(model) {
   whole_ = new NamedSlider(tr("whole loop"), true);
-  whole_->setFixedWidth(148);
+  whole_->setFixedWidth(kWholeWidth);
   zoneGrid_ = new QGridLayout;
   zoneGrid_->setContentsMargins(0, 0, 0, 0);
   zoneGrid_->setHorizontalSpacing(kZoneGap);
@@ -44,8 +45,9 @@ LoadSliders::LoadSliders(PartLoadModel& model, const theme::ThemeHolder& holder,
   hint_->setWordWrap(true);
   mode_ = new theme::SegmentedSwitch({tr("by load"), tr("by position")}, holder);
   mode_->setAccessibleName(tr("Sliders set loads or valve positions"));
-  mode_->setToolTip(tr("By load: terminals ask for a share of their design flow.\n"
-                       "By position: control valves stand where the slider says."));
+  mode_->setToolTip(
+      tr("By load: terminals ask for a share of their design flow.\n"
+         "By position: control valves stand where the slider says."));
 
   auto* top = new QHBoxLayout;
   top->setSpacing(24);
@@ -92,7 +94,7 @@ void LoadSliders::buildZones() {
 }
 
 void LoadSliders::placeZones() {
-  const int space = width() - 40 - 148 - 24;
+  const int space = width() - 40 - kWholeWidth - 24;
   const int count = static_cast<int>(zones_.size());
   const int fitting = std::max(1, (space + kZoneGap) / (kZoneWidth + kZoneGap));
   const int columns = count == 0 ? 0 : std::min(count, fitting);

@@ -81,8 +81,7 @@ void LoopPane::fillStates() {
   delete menu->findChild<QActionGroup*>();
   auto* group = new QActionGroup(menu);
   for (int i = -1; i < static_cast<int>(states.size()); ++i) {
-    const QString name =
-        i < 0 ? tr("Design load") : QString::fromStdString(states[static_cast<std::size_t>(i)].name);
+    const QString name = i < 0 ? tr("Design load") : QString::fromStdString(states[static_cast<std::size_t>(i)].name);
     QAction* action = menu->addAction(name, this, [this, i] { model_.chooseState(i); });
     action->setCheckable(true);
     action->setChecked(i == model_.chosenState());

@@ -42,17 +42,17 @@ NamedSlider::NamedSlider(const QString& name, bool strong, QWidget* parent) : QW
   value_ = new QLabel;
   slider_ = new PercentSlider;
   label_->setProperty("look", strong ? "strong" : "quiet");
-  if (strong) value_->setProperty("look", "strong");
+  value_->setProperty("look", strong ? "strong" : "quiet");
   label_->setMinimumWidth(0);
   label_->setSizePolicy(QSizePolicy::Ignored, QSizePolicy::Preferred);
   label_->setFixedHeight(20);
   value_->ensurePolished();
   // Of one size, so that a new number does not lay the window out again while the slider moves.
-  value_->setFixedSize(value_->fontMetrics().horizontalAdvance(QStringLiteral("100 %")) + 6, 20);
+  value_->setFixedSize(value_->fontMetrics().horizontalAdvance(QStringLiteral("100 %")) + 2, 20);
   label_->setAlignment(Qt::AlignLeft | Qt::AlignVCenter);
   value_->setAlignment(Qt::AlignRight | Qt::AlignVCenter);
   auto* words = new QHBoxLayout;
-  words->setSpacing(4);
+  words->setSpacing(2);
   words->addWidget(label_, 1);
   words->addWidget(value_);
   auto* column = new QVBoxLayout(this);

@@ -8,7 +8,7 @@ namespace ebbline::page {
 
 namespace {
 
-constexpr int kStillMs = 700;             // after this long without a move the second method is asked unbidden,
+constexpr int kStillMs = 700;                // after this long without a move the second method is asked unbidden,
 constexpr int kMostTerminalsUnbidden = 300;  // if the loop is small enough for it to be quick
 constexpr int kWholeDriver = -2;
 constexpr int kFirstTerminalDriver = 1'000'000;
@@ -52,8 +52,8 @@ void PartLoadModel::Engine::prepare(const loop::Loop& loop, unsigned long wanted
   if (faults.empty()) {
     network = std::make_shared<const network::Network>(std::move(compiled.network));
     solver = std::make_unique<network::PartLoadSolver>(network);
-    ground = std::make_shared<const network::PartLoadGround>(
-        solver->ground(network::speedRuleOf(loop, *network), stop));
+    ground =
+        std::make_shared<const network::PartLoadGround>(solver->ground(network::speedRuleOf(loop, *network), stop));
   }
   generation = wanted;
 }
@@ -116,8 +116,8 @@ void PartLoadModel::ask() {
     if (engine->network) {
       const loop::LoadState* state = chosen < 0 ? nullptr : &loop->load_states[static_cast<std::size_t>(chosen)];
       if (!shares) answer->fresh_shares = network::sharesOf(*loop, *engine->network, state);
-      const network::Request request = network::requestOf(
-          *engine->network, shares ? *shares : *answer->fresh_shares, engine->ground->rule);
+      const network::Request request =
+          network::requestOf(*engine->network, shares ? *shares : *answer->fresh_shares, engine->ground->rule);
       answer->picture = std::make_shared<const network::PartLoadPicture>(
           engine->solver->picture(request, *engine->ground, job.stop()));
     }
@@ -190,7 +190,9 @@ double PartLoadModel::terminalPercent(int terminal) const {
   return shares_ && index < shares_->size() ? (*shares_)[index].percent : 0;
 }
 
-void PartLoadModel::setWhole(double percent) { setGroup(kWholeDriver, all_, percent); }
+void PartLoadModel::setWhole(double percent) {
+  setGroup(kWholeDriver, all_, percent);
+}
 
 void PartLoadModel::setZone(int zone, double percent) {
   setGroup(zone, zoneMembers_[static_cast<std::size_t>(zone)], percent);
@@ -225,8 +227,8 @@ void PartLoadModel::checkNow() {
   emit checkedChanged();
   checker_.start(
       [this, network = network_, picture = picture_](const work::Job& job) -> work::Then {
-        auto opinion = std::make_shared<network::SecondOpinion>(
-            network::secondOpinion(*network, picture->request, job.stop()));
+        auto opinion =
+            std::make_shared<network::SecondOpinion>(network::secondOpinion(*network, picture->request, job.stop()));
         return [this, opinion, picture] {
           if (picture != picture_) return;
           checked_ = {Checked::Kind::kDone, std::move(*opinion), QDateTime::currentDateTime()};

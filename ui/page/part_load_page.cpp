@@ -92,6 +92,8 @@ void PartLoadPage::showPicture() {
                                              : tr("all %1 supplied").arg(total));
 }
 
-void PartLoadPage::select(loop::Id id) { table_->select(id); }
+void PartLoadPage::select(loop::Id id) {
+  table_->select(id);
+}
 
 }  // namespace ebbline::page

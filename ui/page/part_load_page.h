@@ -1,8 +1,8 @@
 #pragma once
 // Part load: what happens as valves close? Control above, head and flow, the table of terminals below.
 
-#include <QPushButton>
 #include <QLabel>
+#include <QPushButton>
 #include <QTimer>
 #include <QWidget>
 

@@ -49,8 +49,7 @@ void RemarkList::show(const QString& title, const std::vector<text::Remark>& rem
     if (static_cast<std::size_t>(shown_) == kMostShown) break;
     add(remark);
   }
-  if (remarks.size() > kMostShown)
-    list_->addWidget(new QLabel(tr("and %1 more").arg(remarks.size() - kMostShown)));
+  if (remarks.size() > kMostShown) list_->addWidget(new QLabel(tr("and %1 more").arg(remarks.size() - kMostShown)));
   list_->addStretch(1);
   back_->setVisible(hasLoop);
 }

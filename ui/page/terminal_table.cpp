@@ -69,12 +69,18 @@ void TerminalTableModel::sortBy(int column, bool descending) {
 double TerminalTableModel::keyOf(int terminal) const {
   const network::TerminalResult& result = results_[static_cast<std::size_t>(terminal)];
   switch (sortColumn_) {
-    case kRequested: return result.requested_m3s;
-    case kDelivered: return result.delivered_m3s;
-    case kShortfall: return result.shortfall;
-    case kOpening: return result.stroke;
-    case kPressure: return result.available_pa;
-    default: return terminal;
+    case kRequested:
+      return result.requested_m3s;
+    case kDelivered:
+      return result.delivered_m3s;
+    case kShortfall:
+      return result.shortfall;
+    case kOpening:
+      return result.stroke;
+    case kPressure:
+      return result.available_pa;
+    default:
+      return terminal;
   }
 }
 
@@ -109,22 +115,30 @@ int TerminalTableModel::rowCount(const QModelIndex& parent) const {
   return parent.isValid() ? 0 : static_cast<int>(order_.size());
 }
 
-int TerminalTableModel::columnCount(const QModelIndex& parent) const { return parent.isValid() ? 0 : kNumColumns; }
+int TerminalTableModel::columnCount(const QModelIndex& parent) const {
+  return parent.isValid() ? 0 : kNumColumns;
+}
 
 QString TerminalTableModel::cell(const network::TerminalResult& terminal, bool request, int column) const {
   const auto shown = [this](double base, Quantity quantity) {
     return theme::numberText(quantity::toShown(base, quantity, units_), quantity::decimals(quantity, units_));
   };
   switch (column) {
-    case kTag: return QString::fromStdString(terminal.tag);
-    case kRequested: return request ? shown(terminal.requested_m3s, Quantity::kFlow) : QString(theme::kEnDash);
-    case kDelivered: return shown(terminal.delivered_m3s, Quantity::kFlow);
+    case kTag:
+      return QString::fromStdString(terminal.tag);
+    case kRequested:
+      return request ? shown(terminal.requested_m3s, Quantity::kFlow) : QString(theme::kEnDash);
+    case kDelivered:
+      return shown(terminal.delivered_m3s, Quantity::kFlow);
     case kShortfall:
       if (!request) return QString(theme::kEnDash);
       return terminal.under_supplied ? theme::numberText(100 * terminal.shortfall, 1) : tr("none");
-    case kOpening: return theme::numberText(100 * terminal.stroke, 0);
-    case kPressure: return shown(terminal.available_pa, Quantity::kPressure);
-    default: return {};
+    case kOpening:
+      return theme::numberText(100 * terminal.stroke, 0);
+    case kPressure:
+      return shown(terminal.available_pa, Quantity::kPressure);
+    default:
+      return {};
   }
 }
 
@@ -134,18 +148,23 @@ QVariant TerminalTableModel::data(const QModelIndex& index, int role) const {
   const network::TerminalResult& terminal = results_[static_cast<std::size_t>(at)];
   const bool request = requests_[static_cast<std::size_t>(at)];
   switch (role) {
-    case Qt::DisplayRole: return cell(terminal, request, index.column());
+    case Qt::DisplayRole:
+      return cell(terminal, request, index.column());
     case Qt::TextAlignmentRole:
       return QVariant::fromValue(index.column() == kTag ? Qt::AlignLeft | Qt::AlignVCenter
                                                         : Qt::AlignRight | Qt::AlignVCenter);
-    case kShare: return index.column() == kOpening ? QVariant(terminal.stroke) : QVariant();
-    case kUnder: return terminal.under_supplied && index.column() == kShortfall;
+    case kShare:
+      return index.column() == kOpening ? QVariant(terminal.stroke) : QVariant();
+    case kUnder:
+      return terminal.under_supplied && index.column() == kShortfall;
     case kEssential:
       return index.column() == kTag && static_cast<std::size_t>(at) < essential_.size() &&
              essential_[static_cast<std::size_t>(at)];
-    case Qt::AccessibleTextRole: return headerData(index.column(), Qt::Horizontal, Qt::DisplayRole).toString() + ' ' +
-                                        cell(terminal, request, index.column());
-    default: return {};
+    case Qt::AccessibleTextRole:
+      return headerData(index.column(), Qt::Horizontal, Qt::DisplayRole).toString() + ' ' +
+             cell(terminal, request, index.column());
+    default:
+      return {};
   }
 }
 
@@ -155,13 +174,20 @@ QVariant TerminalTableModel::headerData(int section, Qt::Orientation orientation
     return QVariant::fromValue((section == kTag ? Qt::AlignLeft : Qt::AlignRight) | Qt::AlignVCenter);
   if (role != Qt::DisplayRole) return {};
   switch (section) {
-    case kTag: return tr("terminal");
-    case kRequested: return tr("requested %1").arg(unitText(Quantity::kFlow, units_));
-    case kDelivered: return tr("delivered %1").arg(unitText(Quantity::kFlow, units_));
-    case kShortfall: return tr("shortfall %");
-    case kOpening: return tr("valve open %");
-    case kPressure: return tr("pressure difference %1").arg(unitText(Quantity::kPressure, units_));
-    default: return {};
+    case kTag:
+      return tr("terminal");
+    case kRequested:
+      return tr("requested %1").arg(unitText(Quantity::kFlow, units_));
+    case kDelivered:
+      return tr("delivered %1").arg(unitText(Quantity::kFlow, units_));
+    case kShortfall:
+      return tr("shortfall %");
+    case kOpening:
+      return tr("valve open %");
+    case kPressure:
+      return tr("pressure difference %1").arg(unitText(Quantity::kPressure, units_));
+    default:
+      return {};
   }
 }
 

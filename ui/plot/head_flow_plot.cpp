@@ -16,7 +16,9 @@ QString unitText(Quantity quantity, UnitSystem units) {
   return QString::fromUtf8(label.data(), static_cast<qsizetype>(label.size()));
 }
 
-QString percentText(double share) { return theme::numberText(100 * share, 0); }
+QString percentText(double share) {
+  return theme::numberText(100 * share, 0);
+}
 
 }  // namespace
 
@@ -47,8 +49,8 @@ void HeadFlowPlot::setGround(const network::PartLoadGround& ground, const QStrin
 void HeadFlowPlot::setPicture(const network::PartLoadPicture& picture) {
   if (!picture.summary.usable()) {
     hasPicture_ = false;
-    const QString why = QString::fromStdString(
-        picture.summary.remark ? text::sentence(*picture.summary.remark) : picture.summary.why);
+    const QString why =
+        QString::fromStdString(picture.summary.remark ? text::sentence(*picture.summary.remark) : picture.summary.why);
     return setState(PlotState::kWithheld, tr("Not drawn: the numbers may not be used. %1").arg(why));
   }
   hasPicture_ = true;
@@ -72,10 +74,10 @@ void HeadFlowPlot::restyle() {
 QPointF HeadFlowPlot::shown(const network::HeadFlowPoint& point) const {
   const double flow = quantity::toShown(point.flow_m3s, Quantity::kFlow, units_);
   // The trade tells pump head as pressure in SI and as height of fluid in IP (common practice).
-  const double head = units_ == UnitSystem::kSi
-                          ? quantity::toShown(point.pressure_pa, Quantity::kPressure, units_)
-                          : quantity::toShown(network::headMetres(point.pressure_pa, ground_.density_kg_m3),
-                                              Quantity::kHead, units_);
+  const double head =
+      units_ == UnitSystem::kSi
+          ? quantity::toShown(point.pressure_pa, Quantity::kPressure, units_)
+          : quantity::toShown(network::headMetres(point.pressure_pa, ground_.density_kg_m3), Quantity::kHead, units_);
   return {flow, head};
 }
 
@@ -110,12 +112,28 @@ void HeadFlowPlot::drawGround() {
              i == 0 ? tr("%1 speed").arg(percent) : percent, LabelAt::kRightEnd, 5 - static_cast<int>(i % 2),
              QPen(colours.ink2, 1.25), colours.ink2, 400, true, shown(curve)});
   }
-  setLine({QStringLiteral("pumpNow"), tr("pump now"), {}, LabelAt::kNone, 0, QPen(colours.ink1, look().stroke.series),
-           colours.ink1, 600, true, {}});
+  setLine({QStringLiteral("pumpNow"),
+           tr("pump now"),
+           {},
+           LabelAt::kNone,
+           0,
+           QPen(colours.ink1, look().stroke.series),
+           colours.ink1,
+           600,
+           true,
+           {}});
   setLine({QStringLiteral("design"), tr("loop at design load"), tr("design load"), LabelAt::kUpperEnd, 7,
            theme::dashedPen(colours.ink1, 1.5, {6, 4}), colours.ink1, 600, true, shown(ground_.design_load)});
-  setLine({QStringLiteral("loopNow"), tr("loop now"), tr("loop now"), LabelAt::kUpperEnd, 9,
-           QPen(colours.ink1, look().stroke.series), colours.ink1, 600, true, {}});
+  setLine({QStringLiteral("loopNow"),
+           tr("loop now"),
+           tr("loop now"),
+           LabelAt::kUpperEnd,
+           9,
+           QPen(colours.ink1, look().stroke.series),
+           colours.ink1,
+           600,
+           true,
+           {}});
   const theme::Series& series = look().seriesOf(seriesKey_);
   setLine({QStringLiteral("control"), controlWords_, controlWords_, LabelAt::kStart, 8,
            theme::seriesPen(series, look(), true), series.label, 600, true, shown(ground_.control)});
@@ -128,8 +146,8 @@ void HeadFlowPlot::drawPicture() {
   if (!hasPicture_ || ground_.pump_family.empty()) return;
   const theme::Colours& colours = look().colours;
   const QString speed = percentText(pumpNow_.speed) + QStringLiteral(" %");
-  setLine({QStringLiteral("pumpNow"), tr("pump now, %1 speed").arg(speed), tr("now %1").arg(speed),
-           LabelAt::kRightEnd, 6, QPen(colours.ink1, look().stroke.series), colours.ink1, 600, true, shown(pumpNow_)});
+  setLine({QStringLiteral("pumpNow"), tr("pump now, %1 speed").arg(speed), tr("now %1").arg(speed), LabelAt::kRightEnd,
+           6, QPen(colours.ink1, look().stroke.series), colours.ink1, 600, true, shown(pumpNow_)});
   setLine({QStringLiteral("loopNow"), tr("loop now"), tr("loop now"), LabelAt::kUpperEnd, 9,
            QPen(colours.ink1, look().stroke.series), colours.ink1, 600, true, shown(loopNow_)});
   clearTrail();
@@ -137,10 +155,16 @@ void HeadFlowPlot::drawPicture() {
   const theme::Series& series = look().seriesOf(seriesKey_);
   std::vector<Mark> marks;
   if (ground_.usable)
-    marks.push_back({QStringLiteral("design"), tr("design load"), Mark::Shape::kRing, shown(ground_.design_point),
-                     series.colour, series.marker, {}});
-  Mark operating{QStringLiteral("operating"), tr("operating point"), Mark::Shape::kOperating, shown(operating_),
-                 series.colour, series.marker, {{tr("speed"), speed}}};
+    marks.push_back({QStringLiteral("design"),
+                     tr("design load"),
+                     Mark::Shape::kRing,
+                     shown(ground_.design_point),
+                     series.colour,
+                     series.marker,
+                     {}});
+  Mark operating{QStringLiteral("operating"), tr("operating point"), Mark::Shape::kOperating,
+                 shown(operating_),           series.colour,         series.marker,
+                 {{tr("speed"), speed}}};
   if (underSupplied_ > 0) operating.more.emplace_back(tr("under-supplied"), QString::number(underSupplied_));
   marks.push_back(std::move(operating));
   setMarks(std::move(marks));

@@ -25,7 +25,9 @@ QMarginsF marginsFor(const theme::Theme& theme) {
   return {48 * f, 80 * f, 64 * f, 40 * f};  // room for tick labels, titles, end labels, axis title
 }
 
-double distance(QPointF a, QPointF b) { return std::hypot(a.x() - b.x(), a.y() - b.y()); }
+double distance(QPointF a, QPointF b) {
+  return std::hypot(a.x() - b.x(), a.y() - b.y());
+}
 
 }  // namespace
 
@@ -57,8 +59,7 @@ Plot::Plot(const theme::ThemeHolder& holder, QWidget* parent) : QChartView(paren
 
 void Plot::restyle() {
   const theme::Colours& colours = look().colours;
-  axisX_->setLinePen(QPen(colours.rule, look().stroke.axis));
-  axisY_->setLinePen(Qt::NoPen);
+  for (QValueAxis* axis : {axisX_, axisY_}) axis->setLinePen(Qt::NoPen);  // the rule line is ours, with short ticks
   for (QValueAxis* axis : {axisX_, axisY_}) axis->setGridLinePen(QPen(colours.grid, look().stroke.grid));
   layOut();
   viewport()->update();
@@ -78,7 +79,9 @@ void Plot::setAxes(const Axis& x, const Axis& y) {
   resetZoom();
 }
 
-void Plot::resetZoom() { showRange(x_, y_); }
+void Plot::resetZoom() {
+  showRange(x_, y_);
+}
 
 void Plot::showRange(const Axis& x, const Axis& y) {
   shownX_ = x;
@@ -143,7 +146,9 @@ void Plot::setMarks(std::vector<Mark> marks) {
   viewport()->update();
 }
 
-void Plot::setTags(std::optional<QPointF> at) { tags_ = at; }
+void Plot::setTags(std::optional<QPointF> at) {
+  tags_ = at;
+}
 
 void Plot::addTrailPoint(QPointF at) {
   if (!trail_.empty() && trail_.back() == at) return;
@@ -152,7 +157,9 @@ void Plot::addTrailPoint(QPointF at) {
   if (trail_.size() > most) trail_.erase(trail_.begin(), trail_.end() - static_cast<std::ptrdiff_t>(most));
 }
 
-void Plot::clearTrail() { trail_.clear(); }
+void Plot::clearTrail() {
+  trail_.clear();
+}
 
 void Plot::setState(PlotState state, const QString& words) {
   state_ = state;
@@ -239,9 +246,9 @@ void Plot::leaveEvent(QEvent* event) {
 void Plot::keyPressEvent(QKeyEvent* event) {
   const auto all = stops();
   const int count = static_cast<int>(all.size());
-  const int step = event->key() == Qt::Key_Right || event->key() == Qt::Key_Down  ? 1
-                   : event->key() == Qt::Key_Left || event->key() == Qt::Key_Up ? -1
-                                                                                : 0;
+  const int step = event->key() == Qt::Key_Right || event->key() == Qt::Key_Down ? 1
+                   : event->key() == Qt::Key_Left || event->key() == Qt::Key_Up  ? -1
+                                                                                 : 0;
   if (step != 0 && count > 0) {
     stop_ = stop_ < 0 ? (step > 0 ? 0 : count - 1) : (stop_ + step + count) % count;
     pointer_.reset();

@@ -30,13 +30,13 @@ enum class LabelAt { kNone, kRightEnd, kUpperEnd, kStart, kMiddle };
 struct Line {
   QString key;
   QString words;
-  QString label;             ///< Direct label; empty = none.
+  QString label;  ///< Direct label; empty = none.
   LabelAt at = LabelAt::kNone;
-  int importance = 0;        ///< When labels collide the less important one moves, then hides.
+  int importance = 0;  ///< When labels collide the less important one moves, then hides.
   QPen pen;
   QColor labelInk;
   int labelWeight = 600;
-  bool hover = true;         ///< Its points can be hovered.
+  bool hover = true;  ///< Its points can be hovered.
   std::vector<QPointF> points;
 };
 
@@ -47,7 +47,7 @@ struct Mark {
   QString words;
   Shape shape = Shape::kRing;
   QPointF at;
-  QColor ink;                ///< kOperating: the dot inside; kSeries: the marker.
+  QColor ink;  ///< kOperating: the dot inside; kSeries: the marker.
   theme::Marker marker = theme::Marker::kCircle;
   std::vector<std::pair<QString, QString>> more;  ///< Further lines of the card, name and value.
 };
@@ -106,7 +106,7 @@ class Plot : public QChartView {
 
  private:
   struct Hovered {
-    QPointF at;                                        ///< In values.
+    QPointF at;  ///< In values.
     QString words;
     std::vector<std::pair<QString, QString>> more;
   };
@@ -147,7 +147,7 @@ class Plot : public QChartView {
   std::optional<Hovered> hovered_;
   std::optional<QPointF> pointer_;  // pixels
   mutable QHash<QString, QPixmap> halos_;
-  int stop_ = -1;                   // reached by arrow keys
+  int stop_ = -1;  // reached by arrow keys
   bool crosshair_ = false;
   PlotState state_ = PlotState::kEmpty;
   QString words_;

@@ -29,8 +29,8 @@ class Room {
 };
 
 struct Place {
-  QPointF anchor;          // on the line
-  QPointF baseline;        // of the text's left end
+  QPointF anchor;    // on the line
+  QPointF baseline;  // of the text's left end
 };
 
 }  // namespace
@@ -86,6 +86,11 @@ void Plot::paintAxes(QPainter& painter) const {
   const QFontMetricsF metrics(font);
   const double middle = metrics.capHeight() / 2;
   painter.setFont(font);
+  painter.setPen(QPen(look().colours.rule, look().stroke.axis));
+  painter.drawLine(area.bottomLeft(), area.bottomRight());
+  for (const double tick : ticksWithin(shownX_.low, shownX_.high, tickStep(shownX_.high - shownX_.low)))
+    painter.drawLine(QPointF(toPixels({tick, 0}).x(), area.bottom()),
+                     QPointF(toPixels({tick, 0}).x(), area.bottom() + 4));
   painter.setPen(look().colours.ink2);
   const auto [tagX, tagY] = tagBoxes();
   const double stepX = tickStep(shownX_.high - shownX_.low);
@@ -93,7 +98,7 @@ void Plot::paintAxes(QPainter& painter) const {
     const QString text = theme::numberText(tick, decimalsOf(stepX));
     const double x = toPixels({tick, 0}).x();
     const double wide = metrics.horizontalAdvance(text);
-    const QRectF box(x - wide / 2, area.bottom() + 6, wide, metrics.height());
+    const QRectF box(x - wide / 2, area.bottom() + 7, wide, metrics.height());
     if (!box.intersects(tagX)) painter.drawText(QPointF(box.left(), box.top() + metrics.ascent()), text);
   }
   const double stepY = tickStep(shownY_.high - shownY_.low);
@@ -241,7 +246,8 @@ void Plot::paintLabels(QPainter& painter) const {
       if (!room.isFree(box) || box.right() > viewport()->width() || box.left() < area.left() - 2 ||
           box.top() < bounds.top() || box.bottom() > area.bottom() + 8)
         continue;
-      paintHalo(painter, place.baseline, *line, area.contains(box.center()) ? look().colours.sheet : look().colours.panel);
+      paintHalo(painter, place.baseline, *line,
+                area.contains(box.center()) ? look().colours.sheet : look().colours.panel);
       room.take(box);
       break;
     }

@@ -11,7 +11,9 @@ namespace ebbline::shell {
 
 namespace {
 
-QString words(const char* english) { return QCoreApplication::translate("Help", english); }
+QString words(const char* english) {
+  return QCoreApplication::translate("Help", english);
+}
 
 void showText(QWidget* parent, const QString& title, const QString& html) {
   auto* dialog = new QDialog(parent);
@@ -42,10 +44,12 @@ QString aboutText() {
   return words(
              "<h3>Ebbline %1</h3>"
              "<p>Decides how a branched chilled- or hot-water loop behaves at part load, and proves it.</p>"
-             "<p><b>Caution.</b> Results are steady-state estimates for engineering judgement. Check them against local "
+             "<p><b>Caution.</b> Results are steady-state estimates for engineering judgement. Check them against "
+             "local "
              "codes and the makers' data; have a licensed engineer sign what is built. Relief, expansion, water "
              "treatment, freeze protection and minimum plant flow are not replaced by this program.</p>"
-             "<p>Test a lower set-point on site only at steady load near design, with the plant's minimum flow watched, "
+             "<p>Test a lower set-point on site only at steady load near design, with the plant's minimum flow "
+             "watched, "
              "essential terminals excluded and the restore point written down. A failed sensor needs a stated fail "
              "action: a fallback speed, never zero. Mind rapid flow change through chillers, boiler over-run and the "
              "heat dump of solid fuel, hygiene in warm water, thermal relief of sealed sections, dead-heading, and "
@@ -75,8 +79,12 @@ QString keyboardText() {
          QStringLiteral("</table>");
 }
 
-void showAbout(QWidget* parent) { showText(parent, words("About Ebbline"), aboutText()); }
+void showAbout(QWidget* parent) {
+  showText(parent, words("About Ebbline"), aboutText());
+}
 
-void showKeyboard(QWidget* parent) { showText(parent, words("Keyboard"), keyboardText()); }
+void showKeyboard(QWidget* parent) {
+  showText(parent, words("Keyboard"), keyboardText());
+}
 
 }  // namespace ebbline::shell

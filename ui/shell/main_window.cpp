@@ -151,12 +151,10 @@ void MainWindow::connectParts() {
   connect(remarks_, &page::RemarkList::back, this, &MainWindow::showPage);
   connect(remarks_, &page::RemarkList::openAnother, this, &MainWindow::openByDialog);
   connect(remarks_, &page::RemarkList::pointedAt, this, &MainWindow::select);
-  connect(unitSwitch_, &theme::SegmentedSwitch::chosenChanged, this, [this](int chosen) {
-    setUnits(chosen == 0 ? quantity::UnitSystem::kSi : quantity::UnitSystem::kIp);
-  });
-  connect(themeButton_, &QAbstractButton::clicked, this, [this] {
-    setThemeMode(holder_.theme().dark() ? theme::Mode::kLight : theme::Mode::kDark);
-  });
+  connect(unitSwitch_, &theme::SegmentedSwitch::chosenChanged, this,
+          [this](int chosen) { setUnits(chosen == 0 ? quantity::UnitSystem::kSi : quantity::UnitSystem::kIp); });
+  connect(themeButton_, &QAbstractButton::clicked, this,
+          [this] { setThemeMode(holder_.theme().dark() ? theme::Mode::kLight : theme::Mode::kDark); });
   connect(&document_, &document::Document::fileChanged, this, &MainWindow::refreshTitle);
   connect(&document_, &document::Document::changed, this, &MainWindow::refreshTitle);
   connect(&document_, &document::Document::replaced, this, [this] { selected_ = 0; });
@@ -168,7 +166,8 @@ void MainWindow::connectParts() {
     showRemarks(tr("The loop cannot be solved as it is drawn"), model_->faults());
   });
   const auto tellFailure = [this](const QString& message) {
-    strip_->say(tr("A fault of the program ended the calculation: %1. Save your work under another name.").arg(message));
+    strip_->say(
+        tr("A fault of the program ended the calculation: %1. Save your work under another name.").arg(message));
   };
   connect(model_, &page::PartLoadModel::failed, this, tellFailure);
   connect(&reporter_, &work::Worker::failed, this, tellFailure);
@@ -212,14 +211,18 @@ void MainWindow::refreshTitle() {
   saveAction_->setEnabled(!document_.isEmpty());
 }
 
-bool MainWindow::showsRemarks() const { return stack_->currentWidget() == remarks_; }
+bool MainWindow::showsRemarks() const {
+  return stack_->currentWidget() == remarks_;
+}
 
 void MainWindow::showRemarks(const QString& title, const std::vector<text::Remark>& remarks) {
   remarks_->show(title, remarks, model_->network() != nullptr);
   stack_->setCurrentWidget(remarks_);
 }
 
-void MainWindow::showPage() { stack_->setCurrentWidget(page_); }
+void MainWindow::showPage() {
+  stack_->setCurrentWidget(page_);
+}
 
 bool MainWindow::openPath(const QString& path) {
   const std::vector<text::Remark> remarks = document_.open(path);

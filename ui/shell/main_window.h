@@ -25,8 +25,12 @@ class HeaderBar : public QWidget {
  public:
   explicit HeaderBar(const theme::ThemeHolder& holder, QWidget* parent = nullptr);
   void setTitle(const QString& title, bool dirty);
-  class QHBoxLayout* left() { return left_; }
-  class QHBoxLayout* right() { return right_; }
+  class QHBoxLayout* left() {
+    return left_;
+  }
+  class QHBoxLayout* right() {
+    return right_;
+  }
 
  protected:
   void paintEvent(QPaintEvent* event) override;

@@ -61,8 +61,8 @@ void MainWindow::buildFileMenu() {
   }
   file->addSeparator();
   saveAction_ = file->addAction(tr("&Save"), QKeySequence::Save, this, [this] { save(); });
-  QAction* as = file->addAction(tr("Save &as…"), QKeySequence(Qt::CTRL | Qt::SHIFT | Qt::Key_S), this,
-                                [this] { saveAs(); });
+  QAction* as =
+      file->addAction(tr("Save &as…"), QKeySequence(Qt::CTRL | Qt::SHIFT | Qt::Key_S), this, [this] { saveAs(); });
   reportAction_ = file->addAction(tr("Save &report as PDF…"), QKeySequence::Print, this, &MainWindow::reportByDialog);
   reportAction_->setEnabled(false);
   as->setEnabled(false);
@@ -101,9 +101,8 @@ void MainWindow::buildLoopMenu() {
   checkAction_ = menu->addAction(tr("Check this &result"), QKeySequence(Qt::CTRL | Qt::Key_R), this,
                                  [this] { model_->checkNow(); });
   checkAction_->setEnabled(false);
-  menu->addAction(tr("&Whole-loop slider"), QKeySequence(Qt::CTRL | Qt::Key_L), this, [this] {
-    pane_->sliders()->whole()->slider()->setFocus(Qt::ShortcutFocusReason);
-  });
+  menu->addAction(tr("&Whole-loop slider"), QKeySequence(Qt::CTRL | Qt::Key_L), this,
+                  [this] { pane_->sliders()->whole()->slider()->setFocus(Qt::ShortcutFocusReason); });
 }
 
 void MainWindow::buildViewMenu() {
@@ -111,9 +110,8 @@ void MainWindow::buildViewMenu() {
   themeActions_ = exclusive(view, {tr("&Light"), tr("&Dark")});
   connect(themeActions_[0], &QAction::triggered, this, [this] { setThemeMode(theme::Mode::kLight); });
   connect(themeActions_[1], &QAction::triggered, this, [this] { setThemeMode(theme::Mode::kDark); });
-  view->addAction(tr("Light or dark"), QKeySequence(Qt::CTRL | Qt::Key_T), this, [this] {
-    setThemeMode(holder_.theme().dark() ? theme::Mode::kLight : theme::Mode::kDark);
-  });
+  view->addAction(tr("Light or dark"), QKeySequence(Qt::CTRL | Qt::Key_T), this,
+                  [this] { setThemeMode(holder_.theme().dark() ? theme::Mode::kLight : theme::Mode::kDark); });
   view->addSeparator();
   view->addAction(tr("&Zoom to fit"), QKeySequence(Qt::CTRL | Qt::Key_0), this, [this] { pane_->canvas()->fit(); });
 }
@@ -129,7 +127,9 @@ void MainWindow::openByDialog() {
   if (!path.isEmpty()) openPath(path);
 }
 
-bool MainWindow::save() { return document_.path().isEmpty() ? saveAs() : writeTo(document_.path()); }
+bool MainWindow::save() {
+  return document_.path().isEmpty() ? saveAs() : writeTo(document_.path());
+}
 
 bool MainWindow::saveAs() {
   QString path = QFileDialog::getSaveFileName(this, tr("Save loop"), document_.path(), kFilter);

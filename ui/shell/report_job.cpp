@@ -67,9 +67,8 @@ void MainWindow::writeReportTo(const QString& path) {
       content.state_rows = material->state_rows;
       content.method_difference = material->method_difference;
       content.units = units;
-      const QString error = material->picture.summary.usable()
-                                ? report::writeReport(content, path)
-                                : tr("the state shown could not be solved afresh");
+      const QString error = material->picture.summary.usable() ? report::writeReport(content, path)
+                                                               : tr("the state shown could not be solved afresh");
       strip_->say(error.isEmpty() ? tr("report saved as %1").arg(path) : tr("no report: %1").arg(error));
       emit reportWritten(path, error);
     };

@@ -20,13 +20,16 @@ bool isSet(const char* name) {
 }
 
 // Qt ends the program when it finds no display, so it is not asked then.
-bool displayInReach() { return isSet("DISPLAY") || isSet("WAYLAND_DISPLAY") || isSet("QT_QPA_PLATFORM"); }
+bool displayInReach() {
+  return isSet("DISPLAY") || isSet("WAYLAND_DISPLAY") || isSet("QT_QPA_PLATFORM");
+}
 
 void openWhat(MainWindow& window, const QString& what) {
   const auto& samples = resources::sampleNames();
   const std::string name = what.toStdString();
   if (what.isEmpty()) {
-    if (!samples.empty()) window.openSample(QString::fromUtf8(samples.front().data(), static_cast<qsizetype>(samples.front().size())));
+    if (!samples.empty())
+      window.openSample(QString::fromUtf8(samples.front().data(), static_cast<qsizetype>(samples.front().size())));
   } else if (!QFileInfo::exists(what) && std::find(samples.begin(), samples.end(), name) != samples.end()) {
     window.openSample(what);
   } else {

@@ -72,13 +72,13 @@ void StatusStrip::refresh() {
     mark_ = Mark::kTriangle;
   } else {
     put(solved_, picture->solve_ms < 0.01 ? tr("solved in under 0.01 ms")
-                                         : tr("solved %1 ms").arg(theme::roundedText(picture->solve_ms, 2)));
+                                          : tr("solved %1 ms").arg(theme::roundedText(picture->solve_ms, 2)));
     const network::Summary& summary = picture->summary;
     const bool good = summary.flow_residual <= kMostResidual && summary.pressure_residual <= kMostResidual;
-    put(residual_, good ? tr("flow residual %1").arg(theme::residualText(summary.flow_residual))
-                            : tr("flow residual %1, pressure residual %2: beyond 1e-9, do not use")
-                                  .arg(theme::residualText(summary.flow_residual),
-                                       theme::residualText(summary.pressure_residual)));
+    put(residual_,
+        good ? tr("flow residual %1").arg(theme::residualText(summary.flow_residual))
+             : tr("flow residual %1, pressure residual %2: beyond 1e-9, do not use")
+                   .arg(theme::residualText(summary.flow_residual), theme::residualText(summary.pressure_residual)));
     mark_ = good ? Mark::kTick : Mark::kTriangle;
     if (picture->under_supplied > 0) {
       const auto first = static_cast<std::size_t>(picture->first_under_supplied);
@@ -96,13 +96,16 @@ void StatusStrip::refresh() {
 void StatusStrip::showChecked() {
   const page::Checked& checked = model_.checked();
   switch (checked.kind) {
-    case page::Checked::Kind::kNot: put(checked_, {}); break;
-    case page::Checked::Kind::kRunning: put(checked_, tr("second method is running")); break;
+    case page::Checked::Kind::kNot:
+      put(checked_, {});
+      break;
+    case page::Checked::Kind::kRunning:
+      put(checked_, tr("second method is running"));
+      break;
     case page::Checked::Kind::kDone: {
       const QString at = checked.at.toString(QStringLiteral("HH:mm"));
       if (!checked.opinion.second.usable()) {
-        put(checked_, tr("second method gave no answer: %1")
-                              .arg(QString::fromStdString(checked.opinion.second.why)));
+        put(checked_, tr("second method gave no answer: %1").arg(QString::fromStdString(checked.opinion.second.why)));
         break;
       }
       const double difference = checked.opinion.difference.relative;

@@ -1,7 +1,7 @@
 #include "ui/document/document.h"
 
-#include <QTemporaryDir>
 #include <QFile>
+#include <QTemporaryDir>
 
 #include <gtest/gtest.h>
 

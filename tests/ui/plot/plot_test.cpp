@@ -20,9 +20,22 @@ class PlotTest : public testing::Test {
     plot_ = std::make_unique<Plot>(*holder_);
     plot_->resize(640, 420);
     plot_->setAxes({"flow, L/s", 0, 14}, {"head, kPa", 0, 200});
-    plot_->setLine({"a", "pump now", "now", LabelAt::kRightEnd, 1, QPen(Qt::black, 2), Qt::black, 600, true,
+    plot_->setLine({"a",
+                    "pump now",
+                    "now",
+                    LabelAt::kRightEnd,
+                    1,
+                    QPen(Qt::black, 2),
+                    Qt::black,
+                    600,
+                    true,
                     {{0, 180}, {5, 160}, {10, 100}}});
-    plot_->setMarks({{"o", "operating point", Mark::Shape::kOperating, {5, 160}, Qt::red, theme::Marker::kCircle,
+    plot_->setMarks({{"o",
+                      "operating point",
+                      Mark::Shape::kOperating,
+                      {5, 160},
+                      Qt::red,
+                      theme::Marker::kCircle,
                       {{"speed", "77 %"}}}});
     plot_->setState(PlotState::kIdle);
     plot_->show();
@@ -101,7 +114,15 @@ TEST_F(PlotTest, AWithheldPictureShowsTheReasonAndNoLine) {
 
 TEST_F(PlotTest, LimitsStayWhileLinesMove) {
   const QPointF before = plot_->toPixels({5, 160});
-  plot_->setLine({"a", "pump now", "now", LabelAt::kRightEnd, 1, QPen(Qt::black, 2), Qt::black, 600, true,
+  plot_->setLine({"a",
+                  "pump now",
+                  "now",
+                  LabelAt::kRightEnd,
+                  1,
+                  QPen(Qt::black, 2),
+                  Qt::black,
+                  600,
+                  true,
                   {{0, 1800}, {50, 1600}}});
   EXPECT_EQ(plot_->toPixels({5, 160}), before);
 }
@@ -126,8 +147,8 @@ TEST(HeadFlowPlotTest, AnAnswerThatMayNotBeUsedWithholdsThePictureAndSaysWhy) {
   network::PartLoadPicture picture;
   picture.summary.ended = network::Ended::kConverged;
   picture.operating = {0.006, 1.5e5};
-  picture.pump_now = network::pumpCurve(network::PumpLaw{0, "P1", 0, part::PumpCurve({{0, 17, 0}, {0.012, 9, 0}}),
-                                                         0.2, 1.0}, 1000, 1);
+  picture.pump_now =
+      network::pumpCurve(network::PumpLaw{0, "P1", 0, part::PumpCurve({{0, 17, 0}, {0.012, 9, 0}}), 0.2, 1.0}, 1000, 1);
   plot.setPicture(picture);
   EXPECT_EQ(plot.state(), PlotState::kIdle);
   EXPECT_EQ(plot.marks().size(), 2U);

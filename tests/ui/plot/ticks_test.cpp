@@ -37,7 +37,8 @@ TEST(AxisTicks, ThereAreFourToEightOnALimitMadeRound) {
 }
 
 TEST(AxisTicks, NothingUsefulGivesAUsableAxisAllTheSame) {
-  for (const double bad : {0.0, -3.0, std::numeric_limits<double>::quiet_NaN(), std::numeric_limits<double>::infinity()}) {
+  for (const double bad :
+       {0.0, -3.0, std::numeric_limits<double>::quiet_NaN(), std::numeric_limits<double>::infinity()}) {
     EXPECT_EQ(tickStep(bad), 1);
     EXPECT_EQ(roundLimit(bad), 1);
   }

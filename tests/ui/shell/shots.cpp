@@ -70,10 +70,17 @@ void setUp(MainWindow& window, const QCommandLineParser& options) {
 int main() {
   QApplication& application = ebbline::test::application();
   QCommandLineParser options;
-  options.addOptions({{"out", "picture", "png"}, {"size", "size", "WxH", "1440x900"}, {"dark", "dark theme"},
-                      {"ip", "IP units"}, {"whole", "whole-loop slider", "percent"}, {"state", "load state", "index"},
-                      {"select", "chosen terminal", "tag"}, {"colour", "colour by", "what"}, {"hover", "hover the point"},
-                      {"set-point", "typed set-point", "text"}, {"position", "sliders by position"},
+  options.addOptions({{"out", "picture", "png"},
+                      {"size", "size", "WxH", "1440x900"},
+                      {"dark", "dark theme"},
+                      {"ip", "IP units"},
+                      {"whole", "whole-loop slider", "percent"},
+                      {"state", "load state", "index"},
+                      {"select", "chosen terminal", "tag"},
+                      {"colour", "colour by", "what"},
+                      {"hover", "hover the point"},
+                      {"set-point", "typed set-point", "text"},
+                      {"position", "sliders by position"},
                       {"check", "second method"}});
   options.addPositionalArgument("file", "file or sample");
   QFile arguments("/proc/self/cmdline");

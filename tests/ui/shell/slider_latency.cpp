@@ -47,7 +47,9 @@ struct Measured {
 };
 
 /// Time the process has had on the processors; other programs do not count.
-double cpuMs() { return 1000.0 * static_cast<double>(std::clock()) / CLOCKS_PER_SEC; }
+double cpuMs() {
+  return 1000.0 * static_cast<double>(std::clock()) / CLOCKS_PER_SEC;
+}
 
 Measured measure(MainWindow& window, int events) {
   auto* slider = window.loopPane()->sliders()->whole()->slider();
@@ -55,8 +57,8 @@ Measured measure(MainWindow& window, int events) {
   PaintWatch plot(window.partLoadPage()->plot()->viewport());
   PaintWatch table(window.partLoadPage()->table()->viewport());
   bool answered = false;
-  const auto connection =
-      QObject::connect(&window.model(), &ebbline::page::PartLoadModel::pictureChanged, &window, [&] { answered = true; });
+  const auto connection = QObject::connect(&window.model(), &ebbline::page::PartLoadModel::pictureChanged, &window,
+                                           [&] { answered = true; });
   const auto place = [&](int i) {
     const double percent = 55 + 35 * std::sin(i * 0.21);
     return QPoint(static_cast<int>(8 + (slider->width() - 16) * percent / 100), slider->height() / 2);
@@ -74,7 +76,8 @@ Measured measure(MainWindow& window, int events) {
     ebbline::test::moveTo(slider, place(i));
     while (!answered || !canvas.painted() || !plot.painted() || !table.painted()) {
       QCoreApplication::processEvents(QEventLoop::AllEvents | QEventLoop::WaitForMoreEvents);
-      if (!answered) for (PaintWatch* watch : {&canvas, &plot, &table}) watch->reset();
+      if (!answered)
+        for (PaintWatch* watch : {&canvas, &plot, &table}) watch->reset();
       if (clock.elapsed() > 5000) return measured;
     }
     measured.total_ms.push_back(static_cast<double>(clock.nsecsElapsed()) * 1e-6);
