@@ -58,8 +58,8 @@ void Paper::nextPage() {
 QFont Paper::font(theme::Text text, int weight) const {
   QFont font = weight == 0 ? look_.font(text) : look_.font(text, weight);
   font.setHintingPreference(QFont::PreferNoHinting);
-  // Any letter spacing keeps Qt from ligatures, which readers cannot search for or copy as letters. It is kept in 1/64.
-  font.setLetterSpacing(QFont::AbsoluteSpacing, 1.01 / 64);
+  // A letter spacing, even of the natural 100 %, keeps Qt from ligatures, which readers cannot search for or copy.
+  font.setLetterSpacing(QFont::PercentageSpacing, 100);
   return font;
 }
 

@@ -184,7 +184,7 @@ std::vector<TerminalDemand> demandsAt(const Network& network, double load_percen
   return demands;
 }
 
-SweepRow solveRow(const Network& network, const Request& request, bool second_method, std::stop_token stop) {
+SweepRow solveRow(const Network& network, const Request& request, bool second_method, const std::stop_token& stop) {
   SweepRow row;
   network::Solver solver(network);
   network::State state;
@@ -205,7 +205,7 @@ SweepRow solveRow(const Network& network, const Request& request, bool second_me
 }
 
 std::vector<SweepRow> sweep(const loop::Loop& loop, const Network& network, const SweepOptions& options,
-                            std::stop_token stop) {
+                            const std::stop_token& stop) {
   const auto requests = requestsOf(loop, network, options);
   std::vector<SweepRow> rows(requests.size());
   parallel::eachIndex(requests.size(), [&](std::size_t i) {

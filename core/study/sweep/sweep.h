@@ -61,10 +61,10 @@ std::vector<network::TerminalDemand> demandsAt(const network::Network& network, 
 /// summary and the others stand. After a stop the rows not reached say kCancelled.
 /// REQUIRES: `network` was compiled from `loop` without a fault.
 std::vector<SweepRow> sweep(const loop::Loop& loop, const network::Network& network, const SweepOptions& options = {},
-                            std::stop_token stop = {});
+                            const std::stop_token& stop = {});
 
 /// One row for a request already made: the same solve and sums, for callers that show a single state.
 SweepRow solveRow(const network::Network& network, const network::Request& request, bool second_method,
-                  std::stop_token stop = {});
+                  const std::stop_token& stop = {});
 
 }  // namespace ebbline::study
