@@ -168,6 +168,7 @@ const std::vector<Roughness>& roughnesses() {
   static const std::vector<Roughness> all = [] {
     const CsvTable table = tableNamed("roughness");
     std::vector<Roughness> rows;
+    rows.reserve(table.numRows());
     for (int row = 0; row < table.numRows(); ++row)
       rows.push_back({table.text(row, "material"), table.number(row, "eps_mm") * kMillimetre, table.text(row, "mark"),
                       table.source()});

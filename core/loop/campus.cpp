@@ -171,6 +171,7 @@ class Builder {
     std::vector<Id> levels;
     const int per_building = per_floor_ * floors_;
     const int used = std::min(floors_, (std::min(left_, per_building) + per_floor_ - 1) / per_floor_);
+    levels.reserve(used);
     for (int floor = 0; floor < used; ++floor)
       levels.push_back(
           addLevel(name + std::to_string(floor + 1), kFloorHeight * (floor + 1), y + kFloorStep * (floor + 1) - 5));
@@ -360,15 +361,15 @@ class Builder {
 
   void addSensorAndControl() {
     const Spot& end = spots_[static_cast<std::size_t>(last_riser_end_)];
-    const Joint* joint = nullptr;
-    for (const Joint& candidate : loop_.joints)
-      if (candidate.id == end.joint) joint = &candidate;
+    Point at;
+    for (const Joint& joint : loop_.joints)
+      if (joint.id == end.joint) at = joint.at;
     Sensor sensor;
     sensor.id = nextId();
     sensor.tag = "dP1";
     sensor.high = {end.joint, Side::kSupply};
     sensor.low = {end.joint, Side::kReturn};
-    sensor.at = {joint->at.x_m - 3, joint->at.y_m + 2};
+    sensor.at = {at.x_m - 3, at.y_m + 2};
     sensor.set_point_kpa = std::ceil(end.available_pa / 100) / 10;
     loop_.sensors.push_back(sensor);
     loop_.control.strategy = Strategy::kFieldSensor;

@@ -86,8 +86,7 @@ struct Doer {
 
 // Takes steps back, last first. They come from Doer, so each of them can be done.
 void takeBack(Loop& loop, const std::vector<Step>& undo_in_order_done) {
-  for (auto step = undo_in_order_done.rbegin(); step != undo_in_order_done.rend(); ++step)
-    (void)std::visit(Doer{loop}, *step);
+  for (std::size_t i = undo_in_order_done.size(); i-- > 0;) (void)std::visit(Doer{loop}, undo_in_order_done[i]);
 }
 
 }  // namespace

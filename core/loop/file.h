@@ -37,7 +37,7 @@ struct Reading {
 };
 
 /// Largest file read [bytes]; a larger one is refused before it is loaded.
-inline constexpr std::size_t kMostFileBytes = 128U * 1024U * 1024U;
+inline constexpr std::size_t kMostFileBytes = std::size_t{128} * 1024 * 1024;
 /// Deepest nesting read.
 inline constexpr int kMostDepth = 64;
 /// Most remarks listed about one file.
