@@ -20,6 +20,9 @@ struct LoopCanvas::Cache {
   std::vector<Label> labels;
   bool labelsValid = false;
   SymbolPixmaps pixmaps;
+  QImage frame;             ///< The drawing as last painted, without what floats over it.
+  bool frameValid = false;  ///< False: something it shows changed, or its size.
+  QPointF frameOrigin;      ///< Where metre (0, 0) stands in it.
 };
 
 }  // namespace ebbline::canvas

@@ -70,8 +70,9 @@ std::vector<CellEntry> cellsOf(const std::vector<Stretch>& stretches) {
   std::vector<CellEntry> out;
   out.reserve(stretches.size() * 2);
   for (size_t i = 0; i < stretches.size(); ++i) {
-    const auto [x0, x1] = std::minmax(stretches[i].a.x(), stretches[i].b.x());
-    const auto [y0, y1] = std::minmax(stretches[i].a.y(), stretches[i].b.y());
+    const QPointF a = stretches[i].a, b = stretches[i].b;
+    const double x0 = std::min(a.x(), b.x()), x1 = std::max(a.x(), b.x());
+    const double y0 = std::min(a.y(), b.y()), y1 = std::max(a.y(), b.y());
     const auto cell = [](double v) { return static_cast<std::int64_t>(std::floor(v / kCell)); };
     for (std::int64_t cx = cell(x0); cx <= cell(x1); ++cx)
       for (std::int64_t cy = cell(y0); cy <= cell(y1); ++cy)

@@ -120,8 +120,12 @@ void LoopCanvas::ensureCache() const {
     cache.pixmaps.clear();
   }
   const LoopPicture picture{&loop_, results_ ? &*results_ : nullptr, units_, colourBy_, selected_};
-  if (!cache.dressing) cache.dressing = &cache.dresser.dress(cache.geometry, *cache.topology, picture, theme);
+  if (!cache.dressing) {
+    cache.dressing = &cache.dresser.dress(cache.geometry, *cache.topology, picture, theme);
+    cache.frameValid = false;
+  }
   if (!cache.labelsValid) {
+    cache.frameValid = false;
     cache.labels = placeLabels(cache.geometry, *cache.dressing, *cache.topology, picture, theme, options_);
     cache.labelsValid = true;
   }
@@ -179,22 +183,47 @@ void LoopCanvas::describeChoice() {
   QAccessible::updateAccessibility(&changed);
 }
 
+// The drawing as a picture of its own: what floats over it, and its fading, cost one copy and no drawing.
+const QImage& LoopCanvas::frame() {
+  Cache& cache = *cache_;
+  const double ratio = devicePixelRatioF();
+  const QSize pixels(static_cast<int>(std::ceil(width() * ratio)), static_cast<int>(std::ceil(height() * ratio)));
+  if (cache.frame.size() != pixels || cache.frame.devicePixelRatio() != ratio) {
+    cache.frame = QImage(pixels, QImage::Format_RGB32);
+    cache.frame.setDevicePixelRatio(ratio);
+    cache.frameValid = false;
+  }
+  if (cache.frameValid && cache.frameOrigin == origin_) return cache.frame;
+  const theme::Theme& theme = holder_.theme();
+  cache.frame.fill(theme.colours.sheet);
+  cache.pixmaps.use(ratio);
+  PixelRects rects(cache.frame);
+  ScreenAids screen{cache.pixmaps, rects};
+  const LoopPicture picture{&loop_, results_ ? &*results_ : nullptr, units_, colourBy_, selected_};
+  const Scene scene{cache.geometry, *cache.dressing, cache.labels, picture, theme, options_};
+  QPainter painter(&cache.frame);
+  ScenePainter(painter, scene, QRectF(rect()), origin_, &screen).paint();
+  cache.frameOrigin = origin_;
+  cache.frameValid = true;
+  return cache.frame;
+}
+
 void LoopCanvas::paintEvent(QPaintEvent*) {
   ensureCache();
   const theme::Theme& theme = holder_.theme();
   QPainter painter(this);
-  painter.fillRect(rect(), theme.colours.sheet);
-  if (cache_->topology && loop_.joints.empty() && loop_.plants.empty()) {
+  if (loop_.joints.empty() && loop_.plants.empty()) {
+    painter.fillRect(rect(), theme.colours.sheet);
     painter.setFont(theme.font(theme::Text::kBody));
     painter.setPen(theme.colours.ink3);
     painter.drawText(rect(), Qt::AlignCenter, tr("Nothing drawn yet. Open a loop or one of the samples."));
     return;
   }
-  if (stale_) painter.setOpacity(0.55);
-  cache_->pixmaps.use(devicePixelRatioF());
-  const LoopPicture picture{&loop_, results_ ? &*results_ : nullptr, units_, colourBy_, selected_};
-  const Scene scene{cache_->geometry, *cache_->dressing, cache_->labels, picture, theme, options_};
-  ScenePainter(painter, scene, QRectF(rect()), origin_, &cache_->pixmaps).paint();
+  if (stale_) {
+    painter.fillRect(rect(), theme.colours.sheet);
+    painter.setOpacity(0.55);
+  }
+  painter.drawImage(QPointF(0, 0), frame());
   painter.setOpacity(1);
   paintCard(painter);
   if (hasFocus() && keyboardFocus_) {

@@ -70,6 +70,7 @@ class LoopCanvas : public QWidget {
  private:
   struct Cache;
   void ensureCache() const;
+  const QImage& frame();
   void choose(loop::Id id);
   void hover(QPointF place);
   void describeChoice();

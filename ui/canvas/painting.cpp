@@ -19,7 +19,34 @@ double length(QPointF v) {
 void SymbolPixmaps::use(double deviceRatio) {
   if (deviceRatio == ratio_) return;
   ratio_ = deviceRatio;
+  clear();
+}
+
+void SymbolPixmaps::clear() {
   terminals_.clear();
+  halos_.clear();
+}
+
+void SymbolPixmaps::drawHaloText(QPainter& painter, QPointF baseline, const QString& text, const QFont& font,
+                                 const QColor& ink, const QColor& ground) {
+  constexpr int kMost = 4000;  // figures change while a slider moves
+  constexpr int kRim = 3;
+  if (halos_.size() > kMost) halos_.clear();
+  const QFontMetricsF metrics(font);
+  const int rise = static_cast<int>(std::ceil(metrics.ascent())) + kRim;
+  QPixmap& halo = halos_[text + QChar(0) + font.key()];
+  if (halo.isNull()) {
+    const int wide = static_cast<int>(std::ceil(metrics.horizontalAdvance(text))) + 2 * kRim;
+    halo = QPixmap(QSize(wide, rise + static_cast<int>(std::ceil(metrics.descent())) + kRim) * ratio_);
+    halo.setDevicePixelRatio(ratio_);
+    halo.fill(Qt::transparent);
+    QPainter inside(&halo);
+    theme::drawHaloText(inside, QPointF(kRim, rise), text, font, ground, ground);
+  }
+  painter.drawPixmap(QPointF(std::round(baseline.x()) - kRim, std::round(baseline.y()) - rise), halo);
+  painter.setFont(font);
+  painter.setPen(ink);
+  painter.drawText(baseline, text);
 }
 
 void SymbolPixmaps::drawTerminal(QPainter& painter, QPointF centre, double scale, const QColor& ink,
@@ -42,8 +69,8 @@ void SymbolPixmaps::drawTerminal(QPainter& painter, QPointF centre, double scale
 }
 
 ScenePainter::ScenePainter(QPainter& painter, const Scene& scene, const QRectF& view, QPointF origin,
-                           SymbolPixmaps* pixmaps)
-    : painter_(painter), scene_(scene), view_(view), origin_(origin), pixmaps_(pixmaps) {
+                           ScreenAids* screen)
+    : painter_(painter), scene_(scene), view_(view), origin_(origin), screen_(screen) {
   visible_ = view.translated(-origin).adjusted(-60, -60, 60, 60);
 }
 
@@ -70,7 +97,7 @@ void ScenePainter::levels() {
   painter_.setPen(QPen(theme.colours.hairline, theme.stroke.hairline));
   for (const loop::Level& level : scene_.picture.loop->levels) {
     double y = origin_.y() - level.line_y_m * scene_.geometry.scale;
-    if (pixmaps_) y = std::floor(y) + 0.5;
+    if (screen_) y = std::floor(y) + 0.5;
     painter_.drawLine(QPointF(view_.left() + kLevelMargin, y), QPointF(view_.right() - kLevelMargin + 4, y));
   }
 }
@@ -87,8 +114,8 @@ void ScenePainter::levelNames() {
     if (y < view_.top() || y > view_.bottom() + 20 || y - above < 14 * theme.textFactor) continue;
     above = y;
     const auto words = [&](double baseline, const QString& text, int weight) {
-      theme::drawHaloText(painter_, {view_.left() + kLevelMargin, baseline}, text,
-                          theme.font(theme::Text::kNote, weight), theme.colours.ink3, theme.colours.sheet);
+      haloText({view_.left() + kLevelMargin, baseline}, text, theme.font(theme::Text::kNote, weight),
+               theme.colours.ink3);
     };
     words(y - 6, QString::fromStdString(level->name), 600);
     if (!scene_.options.elevations) continue;
@@ -99,7 +126,6 @@ void ScenePainter::levelNames() {
 }
 
 void ScenePainter::selectionBand() {
-  painter_.setPen(Qt::NoPen);
   for (const Piece& piece : scene_.geometry.pieces) {
     const StrandLook& look = scene_.dressing.strands[static_cast<size_t>(piece.strand)];
     if (!look.selected || scene_.geometry.strands[static_cast<size_t>(piece.strand)].leg) continue;
@@ -107,8 +133,50 @@ void ScenePainter::selectionBand() {
   }
 }
 
+void ScenePainter::fillBox(const QRectF& box, const QColor& colour) {
+  if (!screen_) {
+    painter_.fillRect(box, colour);
+    return;
+  }
+  screen_->rects.setTransform(painter_.deviceTransform());
+  screen_->rects.fill(box, colour.rgba());
+}
+
+void ScenePainter::haloText(QPointF baseline, const QString& text, const QFont& font, const QColor& ink) {
+  if (screen_)
+    screen_->pixmaps.drawHaloText(painter_, baseline, text, font, ink, scene_.theme.colours.sheet);
+  else
+    theme::drawHaloText(painter_, baseline, text, font, ink, scene_.theme.colours.sheet);
+}
+
+// Level and upright lines straight into the pixels; the few others are left to the painter.
+void ScenePainter::fillLines(const std::vector<QLineF>& lines, const QColor& colour, double width, bool square) {
+  constexpr double kStraight = 1e-6;
+  const double half = width / 2, cap = square ? half : 0;
+  const QRgb ink = colour.rgba();
+  std::vector<QLineF> slanted;
+  screen_->rects.setTransform(painter_.deviceTransform());
+  for (const QLineF& line : lines) {
+    const double x0 = std::min(line.x1(), line.x2()), x1 = std::max(line.x1(), line.x2());
+    const double y0 = std::min(line.y1(), line.y2()), y1 = std::max(line.y1(), line.y2());
+    if (y1 - y0 < kStraight)
+      screen_->rects.fill({QPointF(x0 - cap, y0 - half), QPointF(x1 + cap, y0 + half)}, ink);
+    else if (x1 - x0 < kStraight)
+      screen_->rects.fill({QPointF(x0 - half, y0 - cap), QPointF(x0 + half, y1 + cap)}, ink);
+    else
+      slanted.push_back(line);
+  }
+  if (slanted.empty()) return;
+  painter_.setPen(QPen(colour, width, Qt::SolidLine, square ? Qt::SquareCap : Qt::FlatCap, Qt::MiterJoin));
+  painter_.drawLines(slanted.data(), static_cast<int>(slanted.size()));
+}
+
 void ScenePainter::strokeLines(const std::vector<QLineF>& lines, const QColor& colour, double width, bool square) {
   if (lines.empty()) return;
+  if (screen_) {
+    fillLines(lines, colour, width, square);
+    return;
+  }
   painter_.setPen(QPen(colour, width, Qt::SolidLine, square ? Qt::SquareCap : Qt::FlatCap, Qt::MiterJoin));
   painter_.drawLines(lines.data(), static_cast<int>(lines.size()));
 }
@@ -185,7 +253,7 @@ void ScenePainter::tapsAndDots() {
     const QColor& ink = idle ? theme.colours.pipeIdle : theme.colours.pipe;
     const double radius = dot.radius * theme.strokeFactor;
     if (radius < 1.4) {  // too small to be seen round, and a rectangle costs a tenth
-      painter_.fillRect(QRectF(dot.at - QPointF(radius, radius), QSizeF(2 * radius, 2 * radius)), ink);
+      fillBox(QRectF(dot.at - QPointF(radius, radius), QSizeF(2 * radius, 2 * radius)), ink);
       continue;
     }
     painter_.setBrush(ink);
@@ -245,7 +313,7 @@ void ScenePainter::mark(const Mark& mark) {
 
 void ScenePainter::smallTerminal(const Mark& mark) {
   const double half = std::max(1.5, 11 * mark.scale);
-  painter_.fillRect(QRectF(mark.centre.x() - half, mark.centre.y() - half, 2 * half, 2 * half), inkOf(mark));
+  fillBox(QRectF(mark.centre.x() - half, mark.centre.y() - half, 2 * half, 2 * half), inkOf(mark));
 }
 
 void ScenePainter::terminal(const Mark& mark) {
@@ -258,14 +326,14 @@ void ScenePainter::terminal(const Mark& mark) {
   const QColor ink = inkOf(mark), ground = theme.colours.sheet;
   const QPointF c = mark.centre;
   const double s = mark.scale;
-  if (pixmaps_)
-    pixmaps_->drawTerminal(painter_, c, s, ink, ground, theme.strokeFactor);
+  if (screen_)
+    screen_->pixmaps.drawTerminal(painter_, c, s, ink, ground, theme.strokeFactor);
   else
     drawStrokes(painter_, strokesOf(Symbol::kTerminal), c, s, 0, ink, ground, theme.strokeFactor);
   if (look.known) {
     const QRectF bar(c.x() - 8 * s, c.y() + 5.6 * s, 16 * s, 2.8 * s);
-    painter_.fillRect(bar, theme.colours.hairline);
-    painter_.fillRect(QRectF(bar.topLeft(), QSizeF(bar.width() * look.stroke, bar.height())), ink);
+    fillBox(bar, theme.colours.hairline);
+    fillBox(QRectF(bar.topLeft(), QSizeF(bar.width() * look.stroke, bar.height())), ink);
   }
   if (scene_.picture.loop->terminals[static_cast<size_t>(mark.part.index)].essential)
     drawStrokes(painter_, strokesOf(Symbol::kEssential), c + QPointF(-11.3, -9.5) * s, 0.87 * s, 0, theme.colours.pipe,
@@ -304,7 +372,7 @@ void ScenePainter::words() {
                        : label.ink == LabelInk::kAccent ? c.accent
                                                         : c.ink3;
     if (label.ink == LabelInk::kUnder || onLevelLine(label)) {
-      theme::drawHaloText(painter_, label.baseline, label.text, labelFont(label, scene_.theme), ink, c.sheet);
+      haloText(label.baseline, label.text, labelFont(label, scene_.theme), ink);
       continue;
     }
     painter_.setFont(labelFont(label, scene_.theme));
