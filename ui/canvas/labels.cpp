@@ -35,10 +35,12 @@ class Occupied {
   QHash<quint64, std::vector<QRectF>> cells_;
 };
 
+constexpr double kClearance = 3;  // px between a shortfall and what stands beside it
+
 struct Wish {
   Label label;
   std::vector<QPointF> centres;  ///< Middle of the baseline, best place first.
-  int rank = 5;                  ///< Small = important.
+  double rank = 5;               ///< Small = important.
 };
 
 class Placer {
@@ -81,7 +83,7 @@ class Placer {
     return {mark.centre.x() - half, mark.centre.y() - tall, 2 * half, 2 * tall};
   }
 
-  void wish(loop::Id id, const QString& text, std::vector<QPointF> centres, int weight, LabelInk ink, int rank) {
+  void wish(loop::Id id, const QString& text, std::vector<QPointF> centres, int weight, LabelInk ink, double rank) {
     if (text.isEmpty()) return;
     const bool chosen = id == picture_.selected && id != 0;
     Wish out{
@@ -93,8 +95,10 @@ class Placer {
 
   // Middle of the baseline for a text beside a place, its width known.
   QPointF right(QPointF edge, const QString& text, int weight) const {
-    return edge + QPointF(metrics(px_, weight).horizontalAdvance(text) / 2, 0);
+    return edge + QPointF(width(text, px_, weight) / 2, 0);
   }
+
+  double width(const QString& text, int px, int weight) const { return metrics(px, weight).horizontalAdvance(text); }
 
   const QFontMetricsF& metrics(int px, int weight) const {
     const int key = px * 1000 + weight;
@@ -128,26 +132,36 @@ class Placer {
     return tag;
   }
 
+  // Beside the triangle where terminals stand far enough apart, else past the tag: all in one way, so that rows read
+  // evenly. The greater the shortfall, the earlier it gets a place.
+  void wishForShortfall(const Mark& mark, double shortfall) {
+    const QString text = shortfallText(shortfall);
+    const double half = 11 * mark.scale, wide = width(text, px_, 600), flag = 20 * mark.scale + 3;
+    const QPointF c = mark.centre, edge(c.x() + flag, c.y() - 9.3 * mark.scale + 0.35 * px_);
+    const QPointF beside = edge + QPointF(wide / 2, 0), left(c.x() - half - 4 - wide / 2, edge.y());
+    const double tag = options_.tags ? 1.25 * px_ : 0;
+    const QPointF below(c.x(), c.y() + half + 1.15 * px_ + tag), above(c.x(), c.y() - half - 0.35 * px_ - tag);
+    const QPointF pastTag = mark.above ? above : below, opposite = mark.above ? below : above;
+    const double spacing = topology_.terminalSpacing_m() * geometry_.scale;
+    const bool roomy = spacing <= 0 || spacing >= flag + wide + half + 2 * kClearance;
+    const std::vector<QPointF> places =
+        roomy ? std::vector{beside, pastTag, left, opposite} : std::vector{pastTag, beside, left, opposite};
+    wish(mark.id, text, places, 600, LabelInk::kUnder, 2 - std::clamp(shortfall, 0.0, 1.0));
+  }
+
   void wishForTerminal(const Mark& mark) {
     const TerminalLook& look = dressing_.terminals[static_cast<size_t>(mark.part.index)];
     const QString tag = QString::fromStdString(picture_.loop->terminals[static_cast<size_t>(mark.part.index)].tag);
     const QPointF c = mark.centre;
     const double half = 11 * mark.scale;
-    if (look.under) {
-      const QString text = shortfallText(look.shortfall);
-      const QPointF edge(c.x() + 12 * mark.scale + 8 * mark.scale + 3, c.y() - 9.3 * mark.scale + 0.35 * px_);
-      const QPointF left(c.x() - half - 4 - metrics(px_, 600).horizontalAdvance(text) / 2, edge.y());
-      const QPointF above(c.x(), c.y() - half - 3);
-      wish(mark.id, text, {right(edge, text, 600), left, above, above - QPointF(0, 0.9 * px_)}, 600, LabelInk::kUnder,
-           1);
-    }
+    if (look.under) wishForShortfall(mark, look.shortfall);
     if (!options_.tags) return;
-    const double wide = metrics(px_, 400).horizontalAdvance(tag) / 2 + 4;
+    const double wide = width(tag, px_, 400) / 2 + 4;
     const QPointF below(c.x(), c.y() + half + 1.15 * px_), above(c.x(), c.y() - half - 0.35 * px_);
     const QPointF right(c.x() + half + wide, c.y() + half - 2), left(c.x() - half - wide, c.y() + half - 2);
     const std::vector<QPointF> places{mark.above ? above : below, right, left};
     wish(mark.id, tag, places, look.under ? 600 : 400, look.under ? LabelInk::kUnder : LabelInk::kQuiet,
-         look.under ? 2 : 5);
+         look.under ? 2.5 : 5);
   }
 
   void wishForPlant(const Mark& mark) {
@@ -172,7 +186,7 @@ class Placer {
     const double side = mark.quarterTurns == 2 ? -1 : 1;
     double y = mark.centre.y() - (mark.portHalf + 12) * mark.scale + 18;
     for (const auto& [text, weight] : lines) {
-      const double half = metrics(px_, weight).horizontalAdvance(text) / 2;
+      const double half = width(text, px_, weight) / 2;
       wish(plant.id, text, {{mark.centre.x() + side * (34 * mark.scale + 10 + half), y}}, weight,
            weight == 600 ? LabelInk::kStrong : LabelInk::kPlain, 3);
       y += 1.4 * px_;
@@ -229,16 +243,21 @@ class Placer {
 
   void settle(Wish& wish, std::vector<Label>& out) {
     Label& label = wish.label;
-    const QFontMetricsF& font = metrics(label.px, label.weight);
-    const double width = font.horizontalAdvance(label.text);
-    for (const QPointF& centre : wish.centres) {
-      label.baseline = centre - QPointF(width / 2, 0);
-      label.box = QRectF(label.baseline.x() - 1, label.baseline.y() - 0.78 * label.px, width + 2, 0.98 * label.px);
-      // A shortfall has to be told: it may stand on a line, with its halo, rather than not at all.
-      if (!occupied_.isFree(label.box) || (label.ink != LabelInk::kUnder && !lines_.isFree(label.box))) continue;
-      occupied_.add(label.box);
-      out.push_back(std::move(label));
-      return;
+    const double wide = width(label.text, label.px, label.weight);
+    // A shortfall has to be told: it may stand on a line, with its halo, rather than not at all.
+    const bool mayCross = label.ink == LabelInk::kUnder;
+    for (const bool onLines : {false, true}) {
+      if (onLines && !mayCross) return;
+      for (const QPointF& centre : wish.centres) {
+        label.baseline = centre - QPointF(wide / 2, 0);
+        label.box = QRectF(label.baseline.x() - 1, label.baseline.y() - 0.78 * label.px, wide + 2, 0.98 * label.px);
+        const double clearance = mayCross && !onLines ? kClearance : 0;
+        if (!occupied_.isFree(label.box.adjusted(-clearance, 0, clearance, 0))) continue;
+        if (!onLines && !lines_.isFree(label.box)) continue;
+        occupied_.add(label.box);
+        out.push_back(std::move(label));
+        return;
+      }
     }
   }
 

@@ -97,6 +97,29 @@ TEST(Labels, ShortfallsAreWrittenEvenWhereTerminalsStandClose) {
   }
 }
 
+// Every terminal short, as when a set-point is far too low: figures keep off each other, off symbols and off pipes.
+TEST(Labels, ShortfallsOfAWholeBuildingAreAllToldAndStandOnNoPipe) {
+  for (const double scale : {6.0, 8.0, 10.0, 14.0}) {
+    Labelled drawn(trial::building(4, 6), scale, true);
+    for (network::TerminalResult& terminal : drawn.results.terminals) {
+      terminal.under_supplied = true;
+      terminal.shortfall = 0.45;
+    }
+    const Dressing& dressing = drawn.dresser.dress(drawn.geometry, drawn.topology, drawn.picture, drawn.theme);
+    drawn.labels = placeLabels(drawn.geometry, dressing, drawn.topology, drawn.picture, drawn.theme, drawn.options);
+    int told = 0;
+    for (const Label& label : drawn.labels) {
+      if (!label.text.endsWith('%') || label.ink != LabelInk::kUnder) continue;
+      ++told;
+      for (const Piece& piece : drawn.geometry.pieces)
+        EXPECT_FALSE(label.box.intersects(QRectF(piece.a, piece.b).normalized().adjusted(-1, -1, 1, 1)))
+            << "at " << scale << " px per metre";
+    }
+    EXPECT_EQ(told, 24) << "at " << scale << " px per metre";
+    EXPECT_EQ(overlaps(drawn.labels), 0) << "at " << scale << " px per metre";
+  }
+}
+
 TEST(Labels, NoneIsSmallerThanSixPixels) {
   for (const double scale : {0.5, 1.0, 2.0, 3.0, 4.0, 6.0, 10.0}) {
     const Labelled drawn(trial::building(4, 6), scale, true);
