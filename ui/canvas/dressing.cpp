@@ -4,7 +4,6 @@
 #include <cmath>
 #include <limits>
 #include <map>
-#include <tuple>
 #include <unordered_map>
 
 namespace ebbline::canvas {
@@ -22,8 +21,13 @@ QRgb rgb(const QColor& colour) {
 
 constexpr double kNoFlow = 1e-7;  // of design flow: below this a run is drawn as one without flow
 
-QColor shade(const theme::Theme& theme, ColourBy by, double share) {
-  return by == ColourBy::kPressure ? theme.cividis.at(share) : theme.viridis.at(share);
+constexpr int kShades = 128;  // of a scale: finer than can be told apart, few enough to share pens
+
+std::vector<QRgb> shadesOf(const theme::Theme& theme, ColourBy by) {
+  const theme::ColourScale& scale = by == ColourBy::kPressure ? theme.cividis : theme.viridis;
+  std::vector<QRgb> out;
+  for (int i = 0; i <= kShades; ++i) out.push_back(rgb(scale.at(static_cast<double>(i) / kShades)));
+  return out;
 }
 
 double shown(ColourBy by, double value, quantity::UnitSystem units) {
@@ -38,22 +42,40 @@ double weightOf(double flow_m3s, double designFlow_m3s, const theme::Stroke& str
   return std::clamp(stroke.pipeMin + stroke.pipeGain * share, stroke.pipeMin, stroke.pipeMax);
 }
 
+// Of a scale, measured in the range it has to cover: beyond that too much of it is empty.
+constexpr double kMostCovered = 4.0 / 3;
+
 Scale roundScale(double low, double high) {
   Scale out;
   if (!std::isfinite(low) || !std::isfinite(high)) return out;
   if (high - low < 1e-9 * std::max(1.0, std::abs(high))) high = low + std::max(1e-3, std::abs(low) * 0.01);
-  const double rough = (high - low) / 4, power = std::pow(10.0, std::floor(std::log10(rough)));
-  double step = 10 * power;
-  for (const double factor : {1.0, 2.0, 4.0, 5.0})
-    if (factor * power >= rough * (1 - 1e-9)) {
-      step = factor * power;
+  const double span = high - low, power = std::pow(10.0, std::floor(std::log10(span / 4)));
+  const auto covered = [&](double step) {
+    return (std::ceil(high / step - 1e-9) - std::floor(low / step + 1e-9)) * step;
+  };
+  double step = 0;
+  int decimals = 0;
+  const auto take = [&](double factor) {
+    step = factor * power;
+    decimals =
+        std::max(0, static_cast<int>(-std::floor(std::log10(step) + 1e-9)) + (factor == 2.5 && step < 10 ? 1 : 0));
+  };
+  // The usual step cuts the range into about four. Where a little on one side of zero would open a whole empty step,
+  // the step of at most six that leaves least empty is taken.
+  for (const double factor : {1.0, 2.0, 4.0, 5.0, 10.0})
+    if (factor * power >= span / 4 * (1 - 1e-9)) {
+      take(factor);
       break;
     }
+  if (covered(step) > kMostCovered * span)
+    for (const double factor : {10.0, 5.0, 4.0, 2.5, 2.0, 1.0})
+      if (covered(factor * power) <= 6.01 * factor * power && covered(factor * power) < covered(step) * (1 - 1e-9))
+        take(factor);
   out.valid = true;
   out.step = step;
   out.low = std::floor(low / step + 1e-9) * step;
   out.high = std::ceil(high / step - 1e-9) * step;
-  out.decimals = std::max(0, static_cast<int>(-std::floor(std::log10(step) + 1e-9)));
+  out.decimals = decimals;
   return out;
 }
 
@@ -166,15 +188,15 @@ void Dresser::dressTerminals(const LoopPicture& picture) {
 
 // Widths go in steps of an eighth of a px, so that a loop needs some dozens of pens and not one per pipe.
 void Dresser::collectPens(const Geometry& geometry) {
-  std::map<std::tuple<bool, bool, bool, int, QRgb>, int> known;
+  std::unordered_map<std::uint64_t, int> known;
   out_.pens.clear();
   for (size_t i = 0; i < out_.strands.size(); ++i) {
     StrandLook& look = out_.strands[i];
     const Strand& strand = geometry.strands[i];
     const int eighths = static_cast<int>(std::lround(look.width * 8));
-    const auto [found, fresh] =
-        known.emplace(std::tuple{strand.isReturn, strand.leg, look.outlined, eighths, look.colour},
-                      static_cast<int>(out_.pens.size()));
+    const std::uint64_t key = (static_cast<std::uint64_t>(eighths) << 35) | (std::uint64_t{strand.isReturn} << 34) |
+                              (std::uint64_t{strand.leg} << 33) | (std::uint64_t{look.outlined} << 32) | look.colour;
+    const auto [found, fresh] = known.try_emplace(key, static_cast<int>(out_.pens.size()));
     if (fresh) out_.pens.push_back({eighths / 8.0, look.colour, strand.isReturn, strand.leg, look.outlined});
     look.pen = found->second;
   }
@@ -188,6 +210,7 @@ const Dressing& Dresser::dress(const Geometry& geometry, const Topology& topolog
   if (picture.results) match(geometry, *picture.results);
   const bool coloured = picture.results && picture.colourBy != ColourBy::kNone;
   if (coloured) out_.scale = scaleOf(geometry, picture);
+  const std::vector<QRgb> shades = coloured ? shadesOf(theme, picture.colourBy) : std::vector<QRgb>();
   const QRgb pipe = rgb(theme.colours.pipe), idle = rgb(theme.colours.pipeIdle), accent = rgb(theme.colours.accent);
   out_.strands.resize(geometry.strands.size());
   for (size_t i = 0; i < geometry.strands.size(); ++i) {
@@ -203,8 +226,8 @@ const Dressing& Dresser::dress(const Geometry& geometry, const Topology& topolog
       if (look.idle) look.colour = idle;
       double value = 0;
       if (coloured && out_.scale.valid && !look.idle && valueOf(i, picture, value)) {
-        look.colour =
-            rgb(shade(theme, picture.colourBy, (value - out_.scale.low) / (out_.scale.high - out_.scale.low)));
+        const double share = (value - out_.scale.low) / (out_.scale.high - out_.scale.low);
+        look.colour = shades[share > 0 ? static_cast<size_t>(std::lround(kShades * std::min(share, 1.0))) : 0];
         look.outlined = true;
         look.width = std::max(look.width, strand.leg ? 2.0 : 2.5);
       }

@@ -167,6 +167,16 @@ TEST(RoundScale, HasThreeToSixStepsOnRoundNumbersAroundTheRange) {
   EXPECT_FALSE(roundScale(0, std::nan("")).valid);
 }
 
+TEST(RoundScale, OpensNoEmptyStepForAFewBelowZero) {
+  const Scale scale = roundScale(-3, 115);
+  EXPECT_EQ(scale.low, -25);
+  EXPECT_EQ(scale.high, 125);
+  EXPECT_EQ(scale.step, 25);
+  const Scale small = roundScale(-0.03, 1.15);
+  EXPECT_EQ(small.decimals, 2);
+  EXPECT_NEAR(small.step, 0.25, 1e-12);
+}
+
 TEST(Key, ShowsAtMostFourRoundFlowsUpToDesign) {
   EXPECT_EQ(keyFlows(10.74), (std::vector<double>{0.5, 2, 5, 10}));
   EXPECT_TRUE(keyFlows(0).empty());
