@@ -10,11 +10,6 @@ namespace {
 constexpr double kPaPerKpa = 1000;
 constexpr double kMetresPerMillimetre = 1e-3;
 
-struct Share {
-  loop::DemandKind kind = loop::DemandKind::kRequest;
-  double percent = 100;
-};
-
 TerminalDemand demandOf(const Share& share, double design_flow_m3s) {
   if (share.kind == loop::DemandKind::kPosition) return {share.kind, 0, share.percent / 100};
   return {share.kind, share.percent / 100 * design_flow_m3s, 1};
@@ -102,17 +97,22 @@ SpeedRule speedRuleOf(const loop::Loop& loop, const Network& network) {
   return rule;
 }
 
-Request requestOf(const loop::Loop& loop, const Network& network, const loop::LoadState* state) {
-  Request request;
-  request.speed = speedRuleOf(loop, network);
+double designFlow(const Network& network) {
+  double sum = 0;
+  for (const TerminalLaw& terminal : network.terminals) sum += terminal.design_flow_m3s;
+  return sum;
+}
+
+std::vector<Share> sharesOf(const loop::Loop& loop, const Network& network, const loop::LoadState* state) {
   std::unordered_map<loop::Id, Share> told;
   Share rest;
   if (state) {
     rest = {state->rest_kind, state->rest_percent};
     for (const loop::Demand& demand : state->demands) told[demand.of] = {demand.kind, demand.percent};
   }
-  for (std::size_t t = 0; t < network.terminals.size(); ++t) {
-    const TerminalLaw& terminal = network.terminals[t];
+  std::vector<Share> shares;
+  shares.reserve(network.terminals.size());
+  for (const TerminalLaw& terminal : network.terminals) {
     Share share = rest;
     if (terminal.zone >= 0) {
       const auto zone = told.find(loop.zones[terminal.zone].id);
@@ -120,9 +120,22 @@ Request requestOf(const loop::Loop& loop, const Network& network, const loop::Lo
     }
     const auto own = told.find(terminal.id);
     if (own != told.end()) share = own->second;
-    request.terminals.push_back(demandOf(share, terminal.design_flow_m3s));
+    shares.push_back(share);
   }
+  return shares;
+}
+
+Request requestOf(const Network& network, const std::vector<Share>& shares, const SpeedRule& speed) {
+  Request request;
+  request.speed = speed;
+  request.terminals.reserve(shares.size());
+  for (std::size_t t = 0; t < shares.size(); ++t)
+    request.terminals.push_back(demandOf(shares[t], network.terminals[t].design_flow_m3s));
   return request;
+}
+
+Request requestOf(const loop::Loop& loop, const Network& network, const loop::LoadState* state) {
+  return requestOf(network, sharesOf(loop, network, state), speedRuleOf(loop, network));
 }
 
 }  // namespace ebbline::network

@@ -3,23 +3,15 @@
 #include <algorithm>
 #include <chrono>
 
-#include "core/network/demand.h"
-
 namespace ebbline::network {
 
 namespace {
 
-/// Part of the curves' height that is kept free above the design point, so that "loop now" ends inside the plot.
+/// Share of the plot's height at which the loop's curves end, so that they end inside it.
 constexpr double kTopOfCurves = 0.96;  // our choice of picture, no physics
 
 const TerminalLaw& terminalAt(const Network& network, int index) {
   return network.terminals[static_cast<std::size_t>(index)];
-}
-
-double totalDesignFlow(const Network& network) {
-  double sum = 0;
-  for (const TerminalLaw& terminal : network.terminals) sum += terminal.design_flow_m3s;
-  return sum;
 }
 
 void tellTerminals(PartLoadPicture& picture) {
@@ -37,43 +29,20 @@ void tellTerminals(PartLoadPicture& picture) {
 
 }  // namespace
 
-std::vector<Share> sharesOf(const loop::Loop& loop, const Network& network, const loop::LoadState* state) {
-  const Request request = requestOf(loop, network, state);
-  std::vector<Share> shares;
-  shares.reserve(request.terminals.size());
-  for (std::size_t i = 0; i < request.terminals.size(); ++i) {
-    const TerminalDemand& demand = request.terminals[i];
-    const double design = network.terminals[i].design_flow_m3s;
-    const bool position = demand.kind == loop::DemandKind::kPosition;
-    const double asked = design > 0 ? demand.flow_m3s / design : 0;
-    shares.push_back({demand.kind, 100 * (position ? demand.stroke : asked)});
-  }
-  return shares;
-}
-
-Request requestOf(const Network& network, const std::vector<Share>& shares, const SpeedRule& speed) {
-  Request request;
-  request.speed = speed;
-  request.terminals.reserve(shares.size());
-  for (std::size_t i = 0; i < shares.size(); ++i) {
-    const double part = shares[i].percent / 100;
-    if (shares[i].kind == loop::DemandKind::kPosition)
-      request.terminals.push_back({loop::DemandKind::kPosition, 0, part});
-    else
-      request.terminals.push_back({loop::DemandKind::kRequest, part * network.terminals[i].design_flow_m3s, 1});
-  }
-  return request;
-}
-
 double meanPercent(const Network& network, const std::vector<Share>& shares, const std::vector<int>& members) {
   double weight = 0;
   double sum = 0;
+  double lowest = 100;
+  double highest = 0;
   for (const int member : members) {
     const double design = terminalAt(network, member).design_flow_m3s;
+    const double percent = shares[static_cast<std::size_t>(member)].percent;
     weight += design;
-    sum += design * shares[static_cast<std::size_t>(member)].percent;
+    sum += design * percent;
+    lowest = std::min(lowest, percent);
+    highest = std::max(highest, percent);
   }
-  return weight > 0 ? sum / weight : 0;
+  return weight > 0 ? std::min(std::max(sum / weight, lowest), highest) : 0;  // rounding makes no mean of 100 less
 }
 
 std::vector<Share> movedTo(const Network& network, const std::vector<Share>& base, const std::vector<int>& members,
@@ -84,9 +53,9 @@ std::vector<Share> movedTo(const Network& network, const std::vector<Share>& bas
   for (const int member : members) {
     double& share = moved[static_cast<std::size_t>(member)].percent;
     if (target <= mean)
-      share = mean > 0 ? share * target / mean : target;
+      share *= mean > 0 ? target / mean : 0;  // the ratio first: it is never above 1, so rounding leaves no bound
     else
-      share = 100 - (100 - share) * (100 - target) / (100 - mean);
+      share = 100 - (100 - share) * ((100 - target) / (100 - mean));
   }
   return moved;
 }
@@ -120,7 +89,7 @@ PartLoadGround PartLoadSolver::ground(const SpeedRule& rule, std::stop_token sto
   PartLoadGround ground;
   ground.rule = rule;
   ground.density_kg_m3 = density;
-  ground.design_flow_m3s = totalDesignFlow(*network_);
+  ground.design_flow_m3s = designFlow(*network_);
   ground.pump_family = pumpFamily(pump, density);
   ground.efficiency = efficiencyLines(pump, density);
   const Request design = requestOf(*network_, std::vector<Share>(network_->terminals.size()), rule);

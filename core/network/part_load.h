@@ -6,25 +6,12 @@
 #include <stop_token>
 #include <vector>
 
+#include "core/network/demand.h"
 #include "core/network/results.h"
 #include "core/network/solver.h"
 #include "core/network/system_curve.h"
 
 namespace ebbline::network {
-
-/// What one terminal is told, in percent of its design flow (kRequest) or of its stroke (kPosition).
-struct Share {
-  loop::DemandKind kind = loop::DemandKind::kRequest;
-  double percent = 100;
-  bool operator==(const Share&) const = default;
-};
-
-/// Shares of a load state of the document; nullptr: every terminal asks for its design flow.
-std::vector<Share> sharesOf(const loop::Loop& loop, const Network& network, const loop::LoadState* state);
-
-/// The request that tells each terminal its share.
-/// REQUIRES: one share per Network::terminals.
-Request requestOf(const Network& network, const std::vector<Share>& shares, const SpeedRule& speed);
 
 /// Mean of the shares of `members` (indices in Network::terminals), weighted by design flow [%]; 0 for no members.
 double meanPercent(const Network& network, const std::vector<Share>& shares, const std::vector<int>& members);
@@ -34,7 +21,8 @@ double meanPercent(const Network& network, const std::vector<Share>& shares, con
 std::vector<Share> movedTo(const Network& network, const std::vector<Share>& base, const std::vector<int>& members,
                            double percent);
 
-/// Turns requests into the strokes at which the valves stand in `results`, so that nothing moves at the change.
+/// Turns requests into the strokes at which the valves stand in `results`, so that nothing moves at the change, save
+/// what a valve with seat leakage lets through when it was asked for less than that.
 std::vector<Share> asPositions(const std::vector<Share>& shares, const Results& results);
 
 /// Turns what each terminal is given into what it asks for, at most its design flow.
@@ -63,7 +51,7 @@ struct PartLoadPicture {
   Summary summary;         ///< usable() is checked before anything is drawn.
   Results results;         ///< Empty unless usable.
   HeadFlowCurve pump_now;  ///< Pump curve at the speed found.
-  HeadFlowCurve loop_now;  ///< Traced with the valves where they are; empty when there is no flow.
+  HeadFlowCurve loop_now;  ///< Traced with the valves where they are; empty when there is no flow but rounding.
   HeadFlowPoint operating;
   double delivered_m3s = 0;    ///< Sum over terminals.
   double delivered_share = 0;  ///< Of the design flow of all terminals.

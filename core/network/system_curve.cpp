@@ -9,6 +9,8 @@ namespace ebbline::network {
 
 namespace {
 
+constexpr double kStandsStill = 1e-9;  // ours, of the flow where the pump's data end: less is what rounding leaves
+
 double pressureAt(const PumpLaw& pump, double density_kg_m3, double flow_m3s, double speed) {
   return pump.curve.head(flow_m3s, speed).value * density_kg_m3 * quantity::kGravity;
 }
@@ -119,7 +121,7 @@ std::vector<EfficiencyLine> efficiencyLines(const PumpLaw& pump, double density_
   for (int i = 1; i <= kSteps && static_cast<int>(lines.size()) < most; ++i) {
     const double flow = last * i / kSteps;
     const double now = pump.curve.efficiency(flow, 1);
-    for (int percent = 40; percent <= best_percent; ++percent) {
+    for (int percent = 40; percent <= best_percent && static_cast<int>(lines.size()) < most; ++percent) {
       const double level = percent * 0.01;
       if (!wanted(percent) || (before - level) * (now - level) > 0 || before == now || before == level) continue;
       const double crossing = flow - last / kSteps * (now - level) / (now - before);
@@ -149,7 +151,8 @@ Traced systemCurve(Solver& solver, const Network& network, const Request& reques
                    const Results& results, double top_pressure_pa, int pump, int num_solves, std::stop_token stop) {
   Traced traced;
   const PumpResult& now = results.pumps[static_cast<std::size_t>(pump)];
-  if (now.flow_m3s <= 0 || now.pressure_pa <= 0) {
+  const double least_flow = kStandsStill * network.pumps[static_cast<std::size_t>(pump)].curve.lastFlow();
+  if (now.flow_m3s <= least_flow || now.pressure_pa <= 0) {
     traced.summary.why = "no flow through the pump, so the loop has no curve";
     return traced;
   }

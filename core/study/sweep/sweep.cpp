@@ -85,12 +85,6 @@ const Edge* edgeOf(const Network& network, int element) {
   return nullptr;
 }
 
-double designFlow(const Network& network) {
-  double sum = 0;
-  for (const network::TerminalLaw& terminal : network.terminals) sum += terminal.design_flow_m3s;
-  return sum;
-}
-
 void addPumps(const Network& network, const network::Results& results, SweepRow& row) {
   double hydraulic = 0;
   for (const network::PumpResult& pump : results.pumps) {
@@ -174,7 +168,7 @@ std::vector<TerminalDemand> demandsAt(const Network& network, double load_percen
   // Those that close last are served first, until the flow asked for is used up; one terminal is left part open.
   std::vector<int> served = nearest_first;
   if (order == ClosingOrder::kNearFirst) std::reverse(served.begin(), served.end());
-  double left = share * designFlow(network);
+  double left = share * network::designFlow(network);
   for (const int t : served) {
     const double design = network.terminals[static_cast<std::size_t>(t)].design_flow_m3s;
     const double flow = std::min(design, left);
@@ -193,7 +187,7 @@ SweepRow solveRow(const Network& network, const Request& request, bool second_me
   const network::Results results = network::resultsOf(network, request, state);
   addPumps(network, results, row);
   addTerminals(network, results, row);
-  const double design = designFlow(network);
+  const double design = network::designFlow(network);
   if (design > 0) row.load_percent = 100 * row.requested_m3s / design;
   if (second_method) {
     network::HardyCross other(network);
