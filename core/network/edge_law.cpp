@@ -36,6 +36,7 @@ EdgeLaws::EdgeLaws(const Network& network)
       pressure_per_head_(network.density_kg_m3 * quantity::kGravity) {
   pipes_.reserve(network.pipes.size());
   for (int e = 0; e < numEdges(); ++e) addEdge(e);
+  findBlocks();
   for (const TerminalLaw& terminal : network.terminals) characteristics_.push_back(characteristicOf(terminal.valve));
   Request open;
   open.terminals.assign(network.terminals.size(), {loop::DemandKind::kPosition, 0, 1});
@@ -45,7 +46,7 @@ EdgeLaws::EdgeLaws(const Network& network)
 void EdgeLaws::addEdge(int e) {
   Row& row = rows_[e];
   const Edge& edge = network_->edges[e];
-  row.first_pipe = static_cast<int>(pipes_.size());
+  row.first_pipe = pipes_.size();
   first_power_.push_back(static_cast<int>(powers_.size()));
   first_pump_.push_back(static_cast<int>(pumps_.size()));
   for (int i = edge.first_element; i < edge.first_element + edge.num_elements; ++i) {
@@ -61,8 +62,7 @@ void EdgeLaws::addEdge(int e) {
       const part::PipeConstants pipe = constantsOf(network_->pipes[p]);
       fixed_quadratic_[e] += pipe.quadratic;
       if (pipe.friction == 0) continue;
-      pipes_.push_back({pipe, {}});
-      turbulent_begin_.push_back(pipe.turbulent_begin);
+      pipes_.add(pipe);
     }
     for (int p = element.first_power; p < element.first_power + element.num_powers; ++p) {
       if (network_->powers[p].exponent == 2)
@@ -71,10 +71,27 @@ void EdgeLaws::addEdge(int e) {
         powers_.push_back(network_->powers[p]);
     }
   }
-  row.num_pipes = static_cast<std::uint16_t>(static_cast<int>(pipes_.size()) - row.first_pipe);
+  row.num_pipes = static_cast<std::uint16_t>(pipes_.size() - row.first_pipe);
   row.num_powers = static_cast<std::uint8_t>(static_cast<int>(powers_.size()) - first_power_.back());
   row.num_pumps = static_cast<std::uint8_t>(static_cast<int>(pumps_.size()) - first_pump_.back());
   row.quadratic = fixed_quadratic_[e];
+}
+
+/// Blocks small enough for what is worked out of them to stay near the processor.
+void EdgeLaws::findBlocks() {
+  constexpr int kMostPipes = 256;
+  constexpr int kMostEdges = 256;
+  std::size_t most_pipes = 0;
+  for (int e = 0; e < numEdges(); ++e) {
+    const Row& row = rows_[e];
+    const bool full = !blocks_.empty() && (blocks_.back().num_pipes + row.num_pipes > kMostPipes ||
+                                           e - blocks_.back().first_edge >= kMostEdges);
+    if (blocks_.empty() || full) blocks_.push_back({e, e, row.first_pipe, 0});
+    blocks_.back().last_edge = e + 1;
+    blocks_.back().num_pipes += row.num_pipes;
+    most_pipes = std::max<std::size_t>(most_pipes, blocks_.back().num_pipes);
+  }
+  for (auto* column : {&block_flow_, &block_loss_, &block_slope_}) column->assign(most_pipes, 0.0);
 }
 
 part::PipeConstants EdgeLaws::constantsOf(const PipeLaw& pipe) const {
@@ -102,7 +119,7 @@ void EdgeLaws::setRequest(const Request& request) {
 }
 
 void EdgeLaws::forget() {
-  for (PipeRow& pipe : pipes_) pipe.memory = {};
+  pipes_.forget();
 }
 
 LossSlope EdgeLaws::pumpLoss(const PumpRow& pump, double flow_m3s, double speed_squared) const {

@@ -2,6 +2,7 @@
 // Loss and slope of every edge at a flow, for one request. Newton, Hardy Cross, residuals and results all use these
 // laws; nothing else in core/network knows a formula of a part. Internal to core/network, tests and the benchmark.
 
+#include <algorithm>
 #include <cmath>
 #include <cstdint>
 #include <limits>
@@ -9,7 +10,7 @@
 
 #include "core/network/network.h"
 #include "core/network/solver.h"
-#include "core/part/pipe.h"
+#include "core/part/friction_batch.h"
 #include "core/part/valve.h"
 
 namespace ebbline::network {
@@ -40,6 +41,25 @@ class EdgeLaws {
   int numEdges() const { return static_cast<int>(rows_.size()); }
   /// Loss of an edge at a flow. Not const: each pipe remembers its last root (speed only, not the answer).
   LossSlope evaluate(int edge, double flow_m3s, double speed_squared);
+
+  /// Many edges at once, block by block, for rounds in which flows move little. In each block: setFlow() for all its
+  /// edges, then evaluateBlock(), then evaluated() of the edges wanted, with the flow that was set. The laws are those
+  /// of evaluate(), to rounding.
+  struct Block {
+    int first_edge = 0;
+    int last_edge = 0;  ///< One past the last.
+    int first_pipe = 0;
+    int num_pipes = 0;
+  };
+  const std::vector<Block>& blocks() const { return blocks_; }
+  void setFlow(const Block& block, int edge, double flow_m3s) {
+    double* flow = block_flow_.data() + (rows_[edge].first_pipe - block.first_pipe);
+    std::fill_n(flow, rows_[edge].num_pipes, flow_m3s);
+  }
+  void evaluateBlock(const Block& block) {
+    pipes_.nearby(block.first_pipe, block.num_pipes, block_flow_.data(), block_loss_.data(), block_slope_.data());
+  }
+  LossSlope evaluated(const Block& block, int edge, double flow_m3s, double speed_squared);
 
   /// Largest flow the edge's terminal lets through [m³/s]; infinity without a requesting terminal.
   double limit(int edge) const { return rows_[edge].limit; }
@@ -73,15 +93,14 @@ class EdgeLaws {
     std::uint8_t num_pumps = 0;
     std::uint8_t always_shut = 0;
   };
-  struct PipeRow {  // law and memory side by side: a round reads both
-    part::PipeFriction law;
-    part::FrictionMemory memory;
-  };
   struct PumpRow {
     const part::PumpCurve* curve = nullptr;
     double sign = 1;
   };
   void addEdge(int edge);
+  void findBlocks();
+  /// The law without its pipes, added to what they lose.
+  LossSlope completed(int edge, double flow_m3s, double speed_squared, LossSlope sum) const;
   part::PipeConstants constantsOf(const PipeLaw& pipe) const;
   LossSlope pumpLoss(const PumpRow& pump, double flow_m3s, double speed_squared) const;
 
@@ -90,8 +109,11 @@ class EdgeLaws {
   std::vector<double> fixed_quadratic_;  // of each edge, without control valves
   std::vector<int> first_power_;         // of each edge
   std::vector<int> first_pump_;
-  std::vector<PipeRow> pipes_;
-  std::vector<part::TurbulentBegin> turbulent_begin_;  // of each pipe
+  part::FrictionColumns pipes_;
+  std::vector<Block> blocks_;
+  std::vector<double> block_flow_;  // of each pipe of the block in work
+  std::vector<double> block_loss_;
+  std::vector<double> block_slope_;
   std::vector<PowerLaw> powers_;
   std::vector<PumpRow> pumps_;
   std::vector<int> edge_of_terminal_;
@@ -109,15 +131,11 @@ inline LossSlope withFault(LossSlope law) {
   return law;
 }
 
-inline LossSlope EdgeLaws::evaluate(int edge, double flow_m3s, double speed_squared) {
+inline LossSlope EdgeLaws::completed(int edge, double flow_m3s, double speed_squared, LossSlope sum) const {
   const Row& row = rows_[edge];
   const double q = std::abs(flow_m3s);
-  LossSlope sum{row.quadratic * q * flow_m3s, 2 * row.quadratic * q, 0};
-  for (int i = row.first_pipe; i < row.first_pipe + row.num_pipes; ++i) {
-    const part::ValueSlope loss = part::pipeFriction(pipes_[i].law, turbulent_begin_[i], flow_m3s, pipes_[i].memory);
-    sum.loss_pa += loss.value;
-    sum.slope_pa_s_m3 += loss.slope;
-  }
+  sum.loss_pa += row.quadratic * q * flow_m3s;
+  sum.slope_pa_s_m3 += 2 * row.quadratic * q;
   if (row.num_powers == 0 && row.num_pumps == 0) return withFault(sum);
   for (int i = first_power_[edge]; i < first_power_[edge] + row.num_powers; ++i) {
     const part::ValueSlope loss = part::powerLoss(powers_[i].coefficient, powers_[i].exponent, flow_m3s);
@@ -131,6 +149,30 @@ inline LossSlope EdgeLaws::evaluate(int edge, double flow_m3s, double speed_squa
     sum.by_speed_squared += loss.by_speed_squared;
   }
   return withFault(sum);
+}
+
+inline LossSlope EdgeLaws::evaluate(int edge, double flow_m3s, double speed_squared) {
+  const Row& row = rows_[edge];
+  LossSlope sum;
+  for (int i = row.first_pipe; i < row.first_pipe + row.num_pipes; ++i) {
+    const part::ValueSlope loss = pipes_.one(i, flow_m3s);
+    sum.loss_pa += loss.value;
+    sum.slope_pa_s_m3 += loss.slope;
+  }
+  return completed(edge, flow_m3s, speed_squared, sum);
+}
+
+inline LossSlope EdgeLaws::evaluated(const Block& block, int edge, double flow_m3s, double speed_squared) {
+  const Row& row = rows_[edge];
+  LossSlope sum;
+  for (int i = row.first_pipe; i < row.first_pipe + row.num_pipes; ++i) {
+    const int at = i - block.first_pipe;
+    part::ValueSlope loss{block_loss_[at], block_slope_[at]};
+    if (loss.slope == part::FrictionColumns::kNotNear) loss = pipes_.one(i, flow_m3s);
+    sum.loss_pa += loss.value;
+    sum.slope_pa_s_m3 += loss.slope;
+  }
+  return completed(edge, flow_m3s, speed_squared, sum);
 }
 
 }  // namespace ebbline::network

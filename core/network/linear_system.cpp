@@ -235,6 +235,7 @@ void LinearSystem::solve(std::vector<double>& right) const {
   const int n = size();
   for (int k = 0; k < n; ++k) {
     const double value = right[k];
+    if (value == 0) continue;  // most of a column that answers to the pumps alone
     for (int a = first_[k]; a < first_[k + 1]; ++a) right[row_[a]] -= off_[a] * value;
     right[k] = value * diagonal_[k];
   }

@@ -74,14 +74,18 @@ void Newton::chooseSpeed() {
   for (const int e : pump_edges_) rows_[e].surplus -= by_speed_[e] * speed_change_;
 }
 
-void Newton::openEdge(int e, double flow) {
+/// An open edge at its present flow.
+void Newton::followLaw(int e, const LossSlope& law) {
   Row& row = rows_[e];
-  const LossSlope law = laws_.evaluate(e, flow, speed_squared_);
-  row.standing = Standing::kOpen;
-  row.flow = flow;
   row.surplus = pressure_[row.from] - pressure_[row.to] - law.loss_pa;
   row.conductance = 1 / std::max(law.slope_pa_s_m3, least_slope_);
   if (law.by_speed_squared != 0) by_speed_[e] = law.by_speed_squared;
+}
+
+void Newton::openEdge(int e, double flow) {
+  rows_[e].standing = Standing::kOpen;
+  rows_[e].flow = flow;
+  followLaw(e, laws_.evaluate(e, flow, speed_squared_));
 }
 
 void Newton::holdEdge(int e) {
@@ -92,13 +96,15 @@ void Newton::holdEdge(int e) {
   row.conductance = row.surplus = 0;
 }
 
-/// Moves one edge with the step; false if it changed its standing. A requesting terminal takes the branch of its law
-/// that the step points to.
+/// Moves the flow of one edge with the step; false if it changed its standing. A requesting terminal takes the branch
+/// of its law that the step points to. What an open edge loses at the new flow is left to its block.
 bool Newton::moveEdge(int e, double slack) {
   Row& row = rows_[e];
+  if (row.standing == Standing::kShut) return true;
   if (row.standing == Standing::kHeld) {
     if (pressure_[row.from] - pressure_[row.to] >= held_loss_[row.terminal] - slack) return true;
-    openEdge(e, limit_[row.terminal]);
+    row.standing = Standing::kOpen;
+    row.flow = limit_[row.terminal];
     return false;
   }
   const double moved = row.flow + share_ * row.conductance * (row.surplus + change_[row.from] - change_[row.to]);
@@ -106,8 +112,17 @@ bool Newton::moveEdge(int e, double slack) {
     holdEdge(e);
     return false;
   }
-  openEdge(e, moved);
+  row.flow = moved;
   return true;
+}
+
+void Newton::noteEdge(int e) {
+  const Row& row = rows_[e];
+  largest_flow_ = std::max(largest_flow_, std::abs(row.flow));
+  worst_shift_ = std::max(worst_shift_, std::abs(row.surplus * row.conductance));
+  if (std::abs(row.surplus) <= worst_surplus_) return;
+  worst_surplus_ = std::abs(row.surplus);
+  worst_edge_ = e;
 }
 
 /// Moves pressures and flows, and puts the next round together on the way.
@@ -120,17 +135,19 @@ void Newton::takeStep() {
   worst_edge_ = -1;
   system_.clear();
   for (std::size_t k = 0; k < draw_.size(); ++k) right_[k] = -draw_[k];
-  const int count = static_cast<int>(rows_.size());
-  for (int e = 0; e < count; ++e) {
-    if (rows_[e].standing == Standing::kShut) continue;
-    if (!moveEdge(e, slack)) ++flips_;
-    assembleEdge(e);
-    const Row& row = rows_[e];
-    largest_flow_ = std::max(largest_flow_, std::abs(row.flow));
-    worst_shift_ = std::max(worst_shift_, std::abs(row.surplus * row.conductance));
-    if (std::abs(row.surplus) <= worst_surplus_) continue;
-    worst_surplus_ = std::abs(row.surplus);
-    worst_edge_ = e;
+  for (const EdgeLaws::Block& block : laws_.blocks()) {
+    for (int e = block.first_edge; e < block.last_edge; ++e) {
+      if (!moveEdge(e, slack)) ++flips_;
+      laws_.setFlow(block, e, rows_[e].flow);
+    }
+    laws_.evaluateBlock(block);
+    for (int e = block.first_edge; e < block.last_edge; ++e) {
+      const Row& row = rows_[e];
+      if (row.standing == Standing::kShut) continue;
+      if (row.standing == Standing::kOpen) followLaw(e, laws_.evaluated(block, e, row.flow, speed_squared_));
+      assembleEdge(e);
+      noteEdge(e);
+    }
   }
 }
 
@@ -151,7 +168,7 @@ void Newton::watchProgress() {
 }
 
 bool Newton::tapsSettled() {
-  gather();
+  gatherForTaps();
   const double tolerance = tolerance_.pressure * pressureScale();
   double least_margin = 0;
   summary_.governing_tap = -1;

@@ -45,6 +45,8 @@ class Newton {
   void takeStep();
   bool moveEdge(int edge, double slack);
   void openEdge(int edge, double flow);
+  void followLaw(int edge, const LossSlope& law);
+  void noteEdge(int edge);
   void holdEdge(int edge);
   void assemble();
   void assembleEdge(int edge);
@@ -59,6 +61,7 @@ class Newton {
   void start(const Request& request, const State& state);
   void coldStart();
   void warmStart(const State& state);
+  bool followValve(int edge);
   bool isOwn(const State& state) const;
   double freeFlow(int edge, double pressure_pa);
   void setFlow(int edge, double flow, bool held);
@@ -75,6 +78,7 @@ class Newton {
   void refuse(text::Remark remark);
   void giveUp();
   void gather();
+  void gatherForTaps();
 
   const Network& network_;
   Tolerance tolerance_;
@@ -86,9 +90,10 @@ class Newton {
   double reference_flow_ = 0;  // sum of what terminals and draws ask for by design [m³/s]
 
   std::vector<Row> rows_;
-  std::vector<double> held_loss_;  // of each terminal: loss of its edge at the limit with the valve open, once held
-  std::vector<double> limit_;      // of each terminal
-  std::vector<double> by_speed_;   // dloss/d(n²), pumps only
+  std::vector<double> held_loss_;   // of each terminal: loss of its edge at the limit with the valve open, once held
+  std::vector<double> limit_;       // of each terminal
+  std::vector<double> resistance_;  // of each terminal's valve when it was last solved for
+  std::vector<double> by_speed_;    // dloss/d(n²), pumps only
   std::vector<int> pump_edges_;
   std::vector<double> pressure_;   // by steps, datum last
   std::vector<double> right_;      // right-hand side of the next round, by steps

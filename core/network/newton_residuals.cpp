@@ -15,6 +15,14 @@ void Newton::gather() {
   for (std::size_t e = 0; e < rows_.size(); ++e) edge_flow_[e] = rows_[e].flow;
 }
 
+/// The same, of nodes and edges that the taps look at alone.
+void Newton::gatherForTaps() {
+  node_pressure_.resize(network_.num_nodes);
+  edge_flow_.resize(rows_.size());
+  for (const int node : border_.taps().nodes()) node_pressure_[node] = pressure_[system_.step(node)];
+  for (const int e : border_.taps().edges()) edge_flow_[e] = rows_[e].flow;
+}
+
 /// Largest imbalance at a node but the datum, which takes what the draws leave.
 void Newton::flowResidual() {
   for (std::size_t k = 0; k < draw_.size(); ++k) change_[k] = draw_[k];

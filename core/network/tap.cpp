@@ -11,6 +11,11 @@ Taps::Taps(const Network& network, const std::vector<TapPair>& pairs) : network_
     high_.push_back(pointOf(pair.high, pair.high_bore_m));
     low_.push_back(pointOf(pair.low, pair.low_bore_m));
   }
+  for (const std::vector<Point>* points : {&high_, &low_})
+    for (const Point& point : *points) {
+      nodes_.push_back(point.node);
+      edges_.insert(edges_.end(), point.meeting.begin(), point.meeting.end());
+    }
 }
 
 Taps::Point Taps::pointOf(int end, double bore_m) const {

@@ -21,6 +21,9 @@ class Taps {
 
   int count() const { return static_cast<int>(pairs_.size()); }
   const TapPair& pair(int index) const { return pairs_[index]; }
+  /// The nodes and edges that readings and derivatives look at; some may come twice.
+  const std::vector<int>& nodes() const { return nodes_; }
+  const std::vector<int>& edges() const { return edges_; }
   /// Static pressure at `high` minus static pressure at `low` [Pa]: total pressures less ρ v²/2 each. The flow at a
   /// tap is the largest of the edges that meet there (the run it is mounted on, before or behind a branch).
   double reading(int index, const EdgeLaws& laws, const std::vector<double>& node_pressure_pa,
@@ -48,6 +51,8 @@ class Taps {
   std::vector<TapPair> pairs_;
   std::vector<Point> high_;
   std::vector<Point> low_;
+  std::vector<int> nodes_;
+  std::vector<int> edges_;
 };
 
 }  // namespace ebbline::network
