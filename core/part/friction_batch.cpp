@@ -71,7 +71,7 @@ std::int64_t stepFromRoots(const Columns& columns, int count, const double* __re
     root[i] = near ? next : x;
     loss[i] = per_flow * flow[i];
     slope[i] = good ? 2 * per_flow * (steepness * (1 + bend * change)) : FrictionColumns::kNotNear;
-    once_more += near & !good ? 1 : 0;
+    once_more += (near & !good) ? 1 : 0;
   }
   return once_more;
 }
