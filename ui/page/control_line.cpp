@@ -5,7 +5,9 @@
 
 #include <QHBoxLayout>
 #include <QKeyEvent>
+#include <QMenu>
 #include <QStyle>
+#include <QToolButton>
 #include <QVBoxLayout>
 
 namespace ebbline::page {
@@ -27,6 +29,27 @@ QString withUnit(double fileValue, Quantity quantity, UnitSystem units) {
 const loop::Sensor* sensorOf(const loop::Loop& loop, loop::Id id) {
   const auto at = std::find_if(loop.sensors.begin(), loop.sensors.end(), [id](const auto& s) { return s.id == id; });
   return at == loop.sensors.end() ? nullptr : &*at;
+}
+
+/// The loop's control under every strategy it has the places and set-points for.
+std::vector<loop::Control> possibleControls(const loop::Loop& loop) {
+  std::vector<loop::Control> all;
+  const auto add = [&](loop::Strategy strategy) {
+    all.push_back(loop.control);
+    all.back().strategy = strategy;
+  };
+  add(loop::Strategy::kConstantSpeed);
+  if (loop.control.set_point_kpa) {
+    add(loop::Strategy::kDpPump);
+    if (loop.control.header_supply && loop.control.header_return) add(loop::Strategy::kDpHeaders);
+  }
+  if (loop.control.sensors.size() > 1) add(loop::Strategy::kFieldSensor);
+  for (const loop::Sensor& sensor : loop.sensors) {
+    if (!sensor.set_point_kpa) continue;
+    add(loop::Strategy::kFieldSensor);
+    all.back().sensors = {sensor.id};
+  }
+  return all;
 }
 
 }  // namespace
@@ -157,9 +180,7 @@ void ControlLine::rebuild() {
   auto* lead = new QLabel(tr("Strategy:"));
   lead->setProperty("look", "quiet");
   row_->addWidget(lead);
-  auto* name = new QLabel(shortWords(document_.loop(), holder_.theme()));
-  name->setProperty("look", "strong");
-  row_->addWidget(name);
+  addStrategies();
   switch (shownControl_.strategy) {
     case loop::Strategy::kConstantSpeed:
       addField(tr("at speed"), Quantity::kPercent, shownControl_.speed_percent, [this](double v, const QString&) {
@@ -193,6 +214,36 @@ void ControlLine::rebuild() {
   }
   row_->addStretch(1);
   fill();
+}
+
+/// The strategies this loop has the places and set-points for; choosing one is a step that can be undone.
+void ControlLine::addStrategies() {
+  auto* button = new QToolButton;
+  button->setProperty("look", "heading");
+  button->setPopupMode(QToolButton::InstantPopup);
+  button->setFocusPolicy(Qt::StrongFocus);
+  button->setText(shortWords(document_.loop(), holder_.theme()));
+  button->setFont(holder_.theme().font(theme::Text::kStrong));
+  button->setAccessibleName(tr("Strategy"));
+  auto* menu = new QMenu(button);
+  const auto add = [&](loop::Control control) {
+    loop::Loop chosen;  // only what the words are made of
+    chosen.control = control;
+    chosen.sensors = document_.loop().sensors;
+    QAction* action = menu->addAction(words(chosen, units_));
+    action->setCheckable(true);
+    action->setChecked(control.strategy == shownControl_.strategy && control.sensors == shownControl_.sensors);
+    // Queued: the line is built anew by the change, and its button must not go while its menu is still open.
+    connect(
+        action, &QAction::triggered, this,
+        [this, control] {
+          push({"Choose strategy", {loop::PutControl{control}}});
+        },
+        Qt::QueuedConnection);
+  };
+  for (const loop::Control& control : possibleControls(document_.loop())) add(control);
+  button->setMenu(menu);
+  row_->addWidget(button);
 }
 
 void ControlLine::addField(const QString& before, Quantity quantity, double value,

@@ -54,6 +54,7 @@ class ControlLine : public QWidget {
  private:
   void rebuild();
   void fill();
+  void addStrategies();
   void addField(const QString& before, quantity::Quantity quantity, double value,
                 std::function<loop::Change(double, const QString&)> change);
   void push(const loop::Change& change);

@@ -8,6 +8,8 @@
 #include <QMenu>
 #include <QMenuBar>
 #include <QTemporaryDir>
+#include <QTimer>
+#include <QToolButton>
 #include <QUndoStack>
 
 #include <gtest/gtest.h>
@@ -159,6 +161,26 @@ TEST_F(WindowTest, ASetPointTypedInAnotherUnitIsTakenAndCanBeUndone) {
     if (one.id != sensor) continue;
     EXPECT_NEAR(*one.set_point_kpa, 13.789514586336722, 1e-9);  // 2 psi, exact definitions
   }
+  window_->loopPane()->canvas()->setFocus();
+  test::key(window_.get(), Qt::Key_Z, Qt::ControlModifier);
+  settle();
+  EXPECT_EQ(window_->document().loop(), before);
+}
+
+TEST_F(WindowTest, AnotherStrategyIsChosenFromTheLineAndUndone) {
+  openSample("school");
+  const loop::Loop before = window_->document().loop();
+  auto* button = window_->partLoadPage()->control()->findChild<QToolButton*>();
+  ASSERT_NE(button, nullptr);
+  QTimer::singleShot(50, [button] {  // the menu runs its own event loop
+    test::key(button->menu(), Qt::Key_Down);
+    test::key(button->menu(), Qt::Key_Return);
+  });
+  button->setFocus();
+  test::key(window_.get(), Qt::Key_Space);
+  settle();
+  EXPECT_EQ(window_->document().loop().control.strategy, loop::Strategy::kConstantSpeed);
+  EXPECT_NEAR(window_->model().picture()->state.speed, before.control.speed_percent / 100, 1e-12);
   window_->loopPane()->canvas()->setFocus();
   test::key(window_.get(), Qt::Key_Z, Qt::ControlModifier);
   settle();
