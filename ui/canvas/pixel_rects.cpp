@@ -29,21 +29,18 @@ void PixelRects::setTransform(const QTransform& toPixels) {
   dy_ = toPixels.dy();
 }
 
-void PixelRects::fillRow(int y, double cover, double left, double right, QRgb colour) {
-  auto* row = reinterpret_cast<QRgb*>(bits_ + y * bytesPerLine_);
-  const int first = static_cast<int>(left), last = std::min(width_ - 1, static_cast<int>(right));
-  const auto put = [&](int x, double share) { row[x] = mixed(row[x], colour, shareOf(share)); };
-  if (first == last) {
-    put(first, cover * (right - left));
-    return;
+void PixelRects::fillRows(int from, int to, double cover, const Columns& columns, QRgb colour) {
+  const unsigned first = shareOf(cover * columns.firstShare), inner = shareOf(cover);
+  const unsigned last = shareOf(cover * columns.lastShare);
+  for (int y = from; y < to; ++y) {
+    auto* row = reinterpret_cast<QRgb*>(bits_ + y * bytesPerLine_);
+    row[columns.first] = mixed(row[columns.first], colour, first);
+    if (inner == 256)
+      for (int x = columns.first + 1; x < columns.last; ++x) row[x] = colour;
+    else
+      for (int x = columns.first + 1; x < columns.last; ++x) row[x] = mixed(row[x], colour, inner);
+    if (columns.last > columns.first) row[columns.last] = mixed(row[columns.last], colour, last);
   }
-  put(first, cover * (first + 1 - left));
-  const unsigned whole = shareOf(cover);
-  if (whole == 256)
-    std::fill(row + first + 1, row + last, colour | 0xff000000u);
-  else
-    for (int x = first + 1; x < last; ++x) row[x] = mixed(row[x], colour, whole);
-  put(last, cover * (right - last));
 }
 
 void PixelRects::fill(const QRectF& box, QRgb colour) {
@@ -52,12 +49,16 @@ void PixelRects::fill(const QRectF& box, QRgb colour) {
   const double top = std::max(0.0, box.top() * factor_ + dy_);
   const double bottom = std::min<double>(height_, box.bottom() * factor_ + dy_);
   if (!(left < right) || !(top < bottom)) return;
+  // The pixels that hold the edges; an edge between two pixels belongs to the inner one.
+  Columns columns{static_cast<int>(left), static_cast<int>(std::ceil(right)) - 1, 0, 0};
+  columns.firstShare = std::min<double>(columns.first + 1, right) - left;
+  columns.lastShare = right - columns.last;
+  const int first = static_cast<int>(top), last = static_cast<int>(std::ceil(bottom)) - 1;
   const double alpha = qAlpha(colour) / 255.0;
-  const int last = std::min(height_ - 1, static_cast<int>(bottom));
-  for (int y = static_cast<int>(top); y <= last; ++y) {
-    const double cover = std::min<double>(y + 1, bottom) - std::max<double>(y, top);
-    if (cover > 0) fillRow(y, alpha * cover, left, right, colour);
-  }
+  colour |= 0xff000000u;
+  fillRows(first, first + 1, alpha * (std::min<double>(first + 1, bottom) - top), columns, colour);
+  fillRows(first + 1, last, alpha, columns, colour);
+  if (last > first) fillRows(last, last + 1, alpha * (bottom - last), columns, colour);
 }
 
 }  // namespace ebbline::canvas

@@ -18,7 +18,12 @@ class PixelRects {
   void fill(const QRectF& box, QRgb colour);
 
  private:
-  void fillRow(int y, double cover, double left, double right, QRgb colour);
+  /// Pixels a row is filled through, and how much of the outermost two is covered.
+  struct Columns {
+    int first, last;
+    double firstShare, lastShare;
+  };
+  void fillRows(int from, int to, double cover, const Columns& columns, QRgb colour);
 
   uchar* bits_;
   qsizetype bytesPerLine_;
