@@ -156,6 +156,10 @@ void Newton::watchProgress() {
   constexpr int kPatience = 6;
   constexpr double kLeastShare = 0.125;
   const double measure = worst_surplus_;
+  if (measure <= tolerance_.pressure * pressureScale()) {  // only rounding is left, and it need not fall
+    share_ = 1;
+    return;
+  }
   if (summary_.rounds <= 1 || measure < 0.9 * best_) {
     best_ = summary_.rounds <= 1 ? std::max(measure, best_) : measure;
     rounds_without_gain_ = 0;
