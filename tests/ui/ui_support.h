@@ -14,15 +14,16 @@
 
 namespace ebbline::test {
 
-/// The one QApplication of the process; without a display it paints off screen.
+/// The one QApplication of the process; without a display it paints off screen. It is left standing at the end on
+/// purpose: ended by a static destructor it would outlive parts of Qt and crash there.
 inline QApplication& application() {
   if (qEnvironmentVariableIsEmpty("DISPLAY") && qEnvironmentVariableIsEmpty("QT_QPA_PLATFORM"))
     qputenv("QT_QPA_PLATFORM", "offscreen");
   static int argc = 1;
   static char name[] = "ebbline-test";
   static char* argv[] = {name, nullptr};
-  static QApplication one(argc, argv);
-  return one;
+  static auto* const one = new QApplication(argc, argv);
+  return *one;
 }
 
 /// Runs the event loop until `done` holds; false after `most_ms`.
