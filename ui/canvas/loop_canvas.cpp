@@ -64,6 +64,7 @@ void LoopCanvas::clearResults() {
 void LoopCanvas::setColourBy(ColourBy colourBy) {
   colourBy_ = colourBy;
   cache_->dressing = nullptr;
+  if (fitted_) fit();  // the scale at the foot needs room of its own
   update();
 }
 
@@ -137,7 +138,7 @@ void LoopCanvas::fit() {
   const theme::Theme& theme = holder_.theme();
   PaintOptions options = options_;
   options.largestSymbol *= theme.strokeFactor;
-  const View view = fitView(loop_, *cache_->topology, QRectF(rect()), theme, options);
+  const View view = fitView(loop_, *cache_->topology, QRectF(rect()), theme, options, colourBy_);
   scale_ = view.scale;
   origin_ = QPointF(std::round(view.origin.x()), std::round(view.origin.y()));
   update();

@@ -9,7 +9,7 @@ namespace ebbline::canvas {
 void paintLoop(QPainter& painter, const QRectF& box, const LoopPicture& picture, const theme::Theme& theme,
                const PaintOptions& options) {
   const Topology topology(*picture.loop);
-  const View view = fitView(*picture.loop, topology, box, theme, options);
+  const View view = fitView(*picture.loop, topology, box, theme, options, picture.colourBy);
   const Geometry geometry =
       makeGeometry(*picture.loop, topology, view.scale, {theme.stroke.pairGap, options.largestSymbol, false});
   Dresser dresser;

@@ -12,7 +12,8 @@ GeometryOptions forFit(const theme::Theme& theme, const PaintOptions& options) {
 }
 
 // Room for the words that are not part of the geometry: level names left, plant's lines right, key at the foot.
-QMarginsF wordMargins(const loop::Loop& loop, const theme::Theme& theme, const PaintOptions& options) {
+QMarginsF wordMargins(const loop::Loop& loop, const theme::Theme& theme, const PaintOptions& options,
+                      ColourBy colourBy) {
   const QFontMetricsF metrics(theme.font(theme::Text::kNote, 600));
   QMarginsF out(28, 32, 28, 28);
   if (options.levels) {
@@ -21,7 +22,7 @@ QMarginsF wordMargins(const loop::Loop& loop, const theme::Theme& theme, const P
       widest = std::max(widest, metrics.horizontalAdvance(QString::fromStdString(level.name)));
     if (widest > 0) out.setLeft(16 + std::min(widest, 160.0) + 16);
   }
-  if (options.key) out.setBottom(64);
+  if (options.key) out.setBottom(colourBy == ColourBy::kNone ? 64 : 104);  // a scale stands over the weights
   return out;
 }
 
@@ -44,8 +45,8 @@ double plantWords(const loop::Loop& loop, const Geometry& geometry, const theme:
 }  // namespace
 
 View fitView(const loop::Loop& loop, const Topology& topology, const QRectF& box, const theme::Theme& theme,
-             const PaintOptions& options) {
-  const QMarginsF margins = wordMargins(loop, theme, options);
+             const PaintOptions& options, ColourBy colourBy) {
+  const QMarginsF margins = wordMargins(loop, theme, options, colourBy);
   const QRectF room = box.marginsRemoved(margins);
   View view;
   view.origin = box.center();

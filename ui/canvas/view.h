@@ -15,6 +15,6 @@ constexpr double kSmallestScale = 0.02, kLargestScale = 400;  ///< px per metre
 
 /// The largest view in which the whole loop with its words stands inside `box`.
 View fitView(const loop::Loop& loop, const Topology& topology, const QRectF& box, const theme::Theme& theme,
-             const PaintOptions& options);
+             const PaintOptions& options, ColourBy colourBy);
 
 }  // namespace ebbline::canvas

@@ -47,7 +47,9 @@ loop::Loop office() {
 }
 
 double fitted(const loop::Loop& loop, QSizeF size) {
-  return fitView(loop, Topology(loop), QRectF(QPointF(), size), theme::makeTheme(theme::Mode::kLight), {}).scale;
+  return fitView(loop, Topology(loop), QRectF(QPointF(), size), theme::makeTheme(theme::Mode::kLight), {},
+                 ColourBy::kNone)
+      .scale;
 }
 
 TEST(Labels, OfTheOfficeNeverOverlapAtAnyZoom) {
