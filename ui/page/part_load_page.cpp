@@ -1,5 +1,7 @@
 #include "ui/page/part_load_page.h"
 
+#include <algorithm>
+
 #include <QHBoxLayout>
 #include <QSplitter>
 #include <QVBoxLayout>
@@ -15,7 +17,7 @@ PartLoadPage::PartLoadPage(PartLoadModel& model, const theme::ThemeHolder& holde
   heading->setProperty("look", "title");
   count_ = new QLabel;
   count_->setProperty("look", "quiet");
-  count_->setFixedSize(200, 20);
+  count_->setFixedSize(320, 20);
   underFirst_ = new QPushButton(tr("under-supplied first"));
   underFirst_->setProperty("look", "pill");
   underFirst_->setCheckable(true);
@@ -88,6 +90,11 @@ void PartLoadPage::showPicture() {
     requests.push_back(demand.kind == loop::DemandKind::kRequest);
   table_->terminals()->setResults(picture.results.terminals, std::move(requests));
   const auto total = picture.results.terminals.size();
+  const auto& asked = picture.request.terminals;
+  const bool nothingAsked = std::none_of(asked.begin(), asked.end(), [](const network::TerminalDemand& demand) {
+    return demand.kind == loop::DemandKind::kRequest;
+  });
+  if (nothingAsked) return count_->setText(tr("valves at given positions: nobody is judged"));
   count_->setText(picture.under_supplied > 0 ? tr("%1 of %2 under-supplied").arg(picture.under_supplied).arg(total)
                                              : tr("all %1 supplied").arg(total));
 }

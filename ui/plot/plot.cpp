@@ -58,9 +58,8 @@ Plot::Plot(const theme::ThemeHolder& holder, QWidget* parent) : QChartView(paren
 }
 
 void Plot::restyle() {
-  const theme::Colours& colours = look().colours;
-  for (QValueAxis* axis : {axisX_, axisY_}) axis->setLinePen(Qt::NoPen);  // the rule line is ours, with short ticks
-  for (QValueAxis* axis : {axisX_, axisY_}) axis->setGridLinePen(QPen(colours.grid, look().stroke.grid));
+  for (QValueAxis* axis : {axisX_, axisY_}) axis->setLinePen(Qt::NoPen);      // the rule line is ours, with short ticks
+  for (QValueAxis* axis : {axisX_, axisY_}) axis->setGridLineVisible(false);  // drawBackground() paints the grid
   layOut();
   viewport()->update();
 }

@@ -37,7 +37,18 @@ struct Place {
 
 void Plot::drawBackground(QPainter* painter, const QRectF& rect) {
   painter->fillRect(rect, look().colours.panel);
-  painter->fillRect(chart()->plotArea(), look().colours.sheet);
+  const QRectF area = chart()->plotArea();
+  painter->fillRect(area, look().colours.sheet);
+  // The grid is painted with the ticks' own rule: the chart's grid may lag behind a new size.
+  painter->setPen(QPen(look().colours.grid, look().stroke.grid));
+  for (const double tick : ticksWithin(shownX_.low, shownX_.high, tickStep(shownX_.high - shownX_.low))) {
+    const double x = std::round(toPixels({tick, 0}).x()) + 0.5;
+    painter->drawLine(QPointF(x, area.top()), QPointF(x, area.bottom()));
+  }
+  for (const double tick : ticksWithin(shownY_.low, shownY_.high, tickStep(shownY_.high - shownY_.low))) {
+    const double y = std::round(toPixels({0, tick}).y()) + 0.5;
+    painter->drawLine(QPointF(area.left(), y), QPointF(area.right(), y));
+  }
 }
 
 void Plot::drawForeground(QPainter* painter, const QRectF&) {

@@ -18,6 +18,7 @@ using quantity::Quantity;
 using theme::Text;
 
 constexpr int kPages = 3;
+constexpr double kTallBody = 1.4;  // height over width: A4 is taller, Letter is not and has less room for the plot
 constexpr std::size_t kMostTerminals = 36;  // rows that fit the page under its title
 constexpr double kLineBody = 20;            // px
 constexpr double kLineNote = 15;
@@ -211,13 +212,20 @@ class Report {
       cells.insert(cells.begin(), {QString::fromStdString(row.name)});
       rows.push_back(std::move(cells));
     }
-    paintTable(paper_, y - 6, columns, rows, kRow);
+    y = paintTable(paper_, y - 6, columns, rows, kRow);
+    const std::size_t left_out = content_.state_rows.size() - rows.size();
+    if (left_out > 0)
+      paper_.paragraph(
+          {left(), y + 2}, right() - left(),
+          tr("%1 more load states of the file do not stand here; `sweep --states` lists all.").arg(left_out),
+          paper_.font(Text::kNote), ink().ink2, kLineNote);
   }
 
   void partLoadPage() {
     double y =
         section(head(2) + 20, 2, tr("The pump in the state “%1”").arg(QString::fromStdString(content_.state_name)));
-    const QRectF box(left(), y, right() - left(), 370);
+    const QRectF box(left(), y, right() - left(),
+                     paper_.body().height() > kTallBody * paper_.body().width() ? 370 : 300);
     HeadFlowPicture picture;
     picture.ground = content_.ground;
     picture.picture = content_.picture;

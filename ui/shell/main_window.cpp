@@ -1,5 +1,7 @@
 #include "ui/shell/main_window.h"
 
+#include <algorithm>
+
 #include <QApplication>
 #include <QCloseEvent>
 #include <QDropEvent>
@@ -240,6 +242,11 @@ bool MainWindow::openSample(const QString& name) {
 
 void MainWindow::afterOpening(const QString& name, const std::vector<text::Remark>& remarks, bool opened) {
   if (!opened) return showRemarks(tr("%1 was not opened").arg(name), remarks);
+  // A caution changes what is solved (a misspelt key was left out, say): it is shown before the page, not beside it.
+  const bool caution = std::any_of(remarks.begin(), remarks.end(), [](const text::Remark& remark) {
+    return text::severityOf(remark.code) == text::Severity::kCaution;
+  });
+  if (caution) return showRemarks(tr("%1 was opened, with cautions").arg(name), remarks);
   showPage();
   if (!remarks.empty()) strip_->say(QString::fromStdString(text::oneLine(remarks.front())));
 }
