@@ -150,7 +150,7 @@ void addSolve(CLI::App& app, Context& context) {
 Examples
   ebbline solve office                                    every terminal asks for its design flow
   ebbline solve office --load 40 --strategy dp-pump --set-point 120kPa
-  ebbline solve school --set-point 10kPa                  which terminals fall short?
+  ebbline solve school --set-point 10kPa --state "March noon"   which terminals fall short?
   ebbline solve closed-form --request T1=0 --request T2=0 --position T4=100
   ebbline solve office --json > office-solved.json)");
   verb->callback(

@@ -58,7 +58,7 @@ void draftMachines(Draft& draft);  // compile_machines.cpp: terminals, plants, p
 void addPipeLaws(Draft& draft, Element& element, const loop::Pipe& pipe, loop::Id id, const std::string& tag);
 bool addKnownLoss(Draft& draft, Element& element, const loop::KnownLoss& loss, const char* name, loop::Id id,
                   const std::string& tag);
-void addLink(Draft& draft, Element element, int from, int to, const std::string& tag);
+void addLink(Draft& draft, const Element& element, int from, int to, const std::string& tag);
 void draftFluid(Draft& draft);        // compile_fluid.cpp
 void noteHeights(Draft& draft);       // buoyancy and boiling
 void keepTaps(Draft& draft);          // compile_points.cpp: vessel, sensors, headers, flanges

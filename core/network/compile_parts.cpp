@@ -126,7 +126,7 @@ void addPipeLaws(Draft& draft, Element& element, const loop::Pipe& pipe, loop::I
   draft.network.pipes.push_back(law);
 }
 
-void addLink(Draft& draft, Element element, int from, int to, const std::string& tag) {
+void addLink(Draft& draft, const Element& element, int from, int to, const std::string& tag) {
   if (from < 0 || to < 0) return;
   if (from == to) {
     draft.say(Code::kLoopSameEnds, element.id, tag, {"this part"});

@@ -77,7 +77,7 @@ class EdgeLaws {
   const part::Characteristic& characteristic(int terminal) const { return characteristics_[terminal]; }
 
   /// Loss of one element in the edge's direction, the control valve of a requesting terminal open.
-  LossSlope evaluateElement(int element, double flow_m3s, double speed_squared) const;
+  LossSlope evaluateElement(int index, double flow_m3s, double speed_squared) const;
 
   /// Largest pressure the pumps can give at no flow and this speed [Pa]; what pressure residuals are relative to.
   double pumpPressure(double speed_squared) const;

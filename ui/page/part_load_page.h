@@ -22,6 +22,7 @@ class PartLoadPage : public QWidget {
   void select(loop::Id id);  ///< From outside; emits nothing.
   plot::HeadFlowPlot* plot() { return plot_; }
   TerminalTable* table() { return table_; }
+  QString countText() const { return count_->text(); }
   ControlLine* control() { return control_; }
 
  signals:

@@ -1,6 +1,7 @@
 #include "ui/shell/main_window.h"
 
 #include <algorithm>
+#include <utility>
 
 #include <QApplication>
 #include <QCloseEvent>
@@ -164,6 +165,7 @@ void MainWindow::connectParts() {
     const bool solvable = model_->network() != nullptr;
     reportAction_->setEnabled(solvable);
     checkAction_->setEnabled(solvable);
+    if (solvable && !cautions_.empty()) return showRemarks(tr("Opened, with cautions"), std::exchange(cautions_, {}));
     if (solvable) return showPage();
     showRemarks(tr("The loop cannot be solved as it is drawn"), model_->faults());
   });
@@ -242,11 +244,12 @@ bool MainWindow::openSample(const QString& name) {
 
 void MainWindow::afterOpening(const QString& name, const std::vector<text::Remark>& remarks, bool opened) {
   if (!opened) return showRemarks(tr("%1 was not opened").arg(name), remarks);
-  // A caution changes what is solved (a misspelt key was left out, say): it is shown before the page, not beside it.
-  const bool caution = std::any_of(remarks.begin(), remarks.end(), [](const text::Remark& remark) {
-    return text::severityOf(remark.code) == text::Severity::kCaution;
-  });
-  if (caution) return showRemarks(tr("%1 was opened, with cautions").arg(name), remarks);
+  // A caution changes what is solved (a misspelt key was left out, say): it is shown once the loop is ready, before the
+  // page.
+  cautions_.clear();
+  if (std::any_of(remarks.begin(), remarks.end(),
+                  [](const text::Remark& remark) { return text::severityOf(remark.code) == text::Severity::kCaution; }))
+    cautions_ = remarks;
   showPage();
   if (!remarks.empty()) strip_->say(QString::fromStdString(text::oneLine(remarks.front())));
 }

@@ -115,6 +115,7 @@ class MainWindow : public QMainWindow {
   page::LoopPane* pane_ = nullptr;
   page::PartLoadPage* page_ = nullptr;
   page::RemarkList* remarks_ = nullptr;
+  std::vector<text::Remark> cautions_;  // of the file just opened, until they are shown
   QStackedWidget* stack_ = nullptr;
   StatusStrip* strip_ = nullptr;
   QList<QAction*> unitActions_;

@@ -14,6 +14,7 @@
 
 #include <gtest/gtest.h>
 
+#include "resources/samples.h"
 #include "tests/ui/ui_support.h"
 #include "ui/shell/main_window.h"
 
@@ -165,6 +166,26 @@ TEST_F(WindowTest, ASetPointTypedInAnotherUnitIsTakenAndCanBeUndone) {
   test::key(window_.get(), Qt::Key_Z, Qt::ControlModifier);
   settle();
   EXPECT_EQ(window_->document().loop(), before);
+}
+
+TEST_F(WindowTest, ACautionOfAFileIsShownBeforeThePage) {
+  QTemporaryDir folder;
+  QFile file(folder.filePath("misspelt.ebbline"));
+  ASSERT_TRUE(file.open(QIODevice::WriteOnly));
+  file.write(QByteArray::fromStdString(std::string(resources::sampleText("school"))).replace("\"strategy\"", "\"stratgy\""));
+  file.close();
+  EXPECT_TRUE(window_->openPath(file.fileName()));
+  settle();
+  EXPECT_TRUE(window_->showsRemarks());
+  EXPECT_TRUE(window_->remarkList()->text().contains("stratgy")) << window_->remarkList()->text().toStdString();
+}
+
+TEST_F(WindowTest, AtGivenPositionsNobodyIsCalledSupplied) {
+  openSample("school");
+  EXPECT_TRUE(window_->partLoadPage()->countText().contains("supplied"));
+  window_->model().setMode(loop::DemandKind::kPosition);
+  settle();
+  EXPECT_FALSE(window_->partLoadPage()->countText().contains("supplied"));
 }
 
 TEST_F(WindowTest, AnotherStrategyIsChosenFromTheLineAndUndone) {
