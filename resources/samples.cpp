@@ -1,27 +1,17 @@
 #include "resources/samples.h"
 
+#include "resources/text_list.h"
+
 namespace ebbline::resources {
 
-// Defined in the file that embed_samples.cmake writes.
-struct EmbeddedSample {
-  std::string_view name;
-  std::string_view text;
-};
-extern const EmbeddedSample kEmbeddedSamples[];
-extern const int kNumEmbeddedSamples;
+extern const TextList kEmbeddedSamples;  // made at build time
 
 std::string_view sampleText(std::string_view name) {
-  for (int i = 0; i < kNumEmbeddedSamples; ++i)
-    if (kEmbeddedSamples[i].name == name) return kEmbeddedSamples[i].text;
-  return {};
+  return kEmbeddedSamples.find(name);
 }
 
 const std::vector<std::string_view>& sampleNames() {
-  static const std::vector<std::string_view> names = [] {
-    std::vector<std::string_view> list;
-    for (int i = 0; i < kNumEmbeddedSamples; ++i) list.push_back(kEmbeddedSamples[i].name);
-    return list;
-  }();
+  static const std::vector<std::string_view> names = kEmbeddedSamples.names();
   return names;
 }
 

@@ -1,7 +1,9 @@
-# cmake -DOUTPUT=x.cpp -DFILES=a.ebbline,b.ebbline -P embed_samples.cmake
-# Writes one C++ file that holds every sample as raw string literals, cut because compilers limit the length of one.
+# cmake -DOUTPUT=x.cpp -DLIST=kEmbeddedTables -DFILES=a.csv,b.csv -P embed_texts.cmake
+# Writes one C++ file that holds every file as raw string literals under its name without ending, as the TextList LIST.
+# They are cut into pieces because compilers limit the length of one literal.
 set(piece_length 8000)
 string(REPLACE "," ";" FILES "${FILES}")
+
 set(entries "")
 set(count 0)
 foreach(file IN LISTS FILES)
@@ -22,20 +24,8 @@ foreach(file IN LISTS FILES)
   string(APPEND entries "},\n")
   math(EXPR count "${count} + 1")
 endforeach()
-file(WRITE "${OUTPUT}" "// Made from samples/ by resources/embed_samples.cmake.
-#include <string_view>
-
-namespace ebbline::resources {
-
-struct EmbeddedSample {
-  std::string_view name;
-  std::string_view text;
-};
-extern const EmbeddedSample kEmbeddedSamples[];
-extern const int kNumEmbeddedSamples;
-const EmbeddedSample kEmbeddedSamples[] = {
-${entries}};
-const int kNumEmbeddedSamples = ${count};
-
-}  // namespace ebbline::resources
-")
+set(code "// Made by resources/embed_texts.cmake.\n#include \"resources/text_list.h\"\n\n")
+string(APPEND code "namespace ebbline::resources {\n\nstatic const EmbeddedText kTexts[] = {\n${entries}};\n")
+string(APPEND code "extern const TextList ${LIST};\nconst TextList ${LIST} = {kTexts, ${count}};\n\n")
+string(APPEND code "}  // namespace ebbline::resources\n")
+file(WRITE "${OUTPUT}" "${code}")
