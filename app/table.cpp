@@ -3,6 +3,8 @@
 #include <algorithm>
 #include <ostream>
 
+#include <fmt/format.h>
+
 namespace ebbline::app {
 namespace {
 
@@ -12,6 +14,14 @@ std::size_t width(const std::string& text) {
 }
 
 }  // namespace
+
+std::string head(const char* words, quantity::Quantity quantity, quantity::UnitSystem units) {
+  return fmt::format("{}, {}", words, quantity::unitLabel(quantity, units));
+}
+
+std::string number(double base, quantity::Quantity quantity, quantity::UnitSystem units) {
+  return quantity::format(base, quantity, units, quantity::Minus::kHyphen);
+}
 
 void Table::print(std::ostream& out) const {
   std::vector<std::size_t> widths(rows_.front().size(), 0);

@@ -5,7 +5,14 @@
 #include <string>
 #include <vector>
 
+#include "core/quantity/quantity.h"
+
 namespace ebbline::app {
+
+/// Head of a column of a quantity: "flow, L/s".
+std::string head(const char* words, quantity::Quantity quantity, quantity::UnitSystem units);
+/// A cell of it, from the base unit; a plain hyphen as minus, so that it can be pasted anywhere.
+std::string number(double base, quantity::Quantity quantity, quantity::UnitSystem units);
 
 /// Columns aligned by what they hold: the first `num_left` to the left, the rest to the right. Width counts characters,
 /// not bytes.

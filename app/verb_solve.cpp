@@ -21,14 +21,6 @@ struct Options {
   bool parts = false;
 };
 
-std::string number(double base, Quantity quantity, UnitSystem units) {
-  return quantity::format(base, quantity, units, quantity::Minus::kHyphen);
-}
-
-std::string head(const char* words, Quantity quantity, UnitSystem units) {
-  return fmt::format("{}, {}", words, quantity::unitLabel(quantity, units));
-}
-
 void printPumps(const network::Results& results, UnitSystem units, std::ostream& out) {
   Table table({"pump", "speed, %", head("flow", Quantity::kFlow, units), head("head", Quantity::kHead, units),
                head("pressure", Quantity::kPressure, units), head("shaft power", Quantity::kPower, units),

@@ -25,15 +25,9 @@ struct Options {
   bool second = false;
 };
 
-std::string head(const char* words, Quantity quantity, UnitSystem units) {
-  return fmt::format("{}, {}", words, quantity::unitLabel(quantity, units));
-}
-
 std::vector<std::string> cells(const study::SweepRow& row, const Options& options) {
   const UnitSystem units = options.output.units();
-  const auto number = [units](double base, Quantity quantity) {
-    return quantity::format(base, quantity, units, quantity::Minus::kHyphen);
-  };
+  const auto number = [units](double base, Quantity quantity) { return app::number(base, quantity, units); };
   const std::string load = fmt::format("{:.0f}", row.load_percent);
   std::vector<std::string> line = {row.name.empty() ? load : row.name};
   if (options.states) line.push_back(row.summary.usable() ? load : "–");
