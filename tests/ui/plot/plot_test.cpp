@@ -1,5 +1,7 @@
 #include "ui/plot/plot.h"
 
+#include <cmath>
+
 #include <QFile>
 #include <QImage>
 #include <QTemporaryDir>
@@ -110,6 +112,20 @@ TEST_F(PlotTest, AWithheldPictureShowsTheReasonAndNoLine) {
   plot_->setState(PlotState::kWithheld, {});
   EXPECT_GT(drawn, 300);
   EXPECT_EQ(inkOf(*plot_), 0);
+}
+
+TEST_F(PlotTest, TheGridStandsAtTheTicksAfterANewSize) {
+  for (const QSize size : {QSize(820, 560), QSize(500, 380), QSize(760, 430)}) {
+    plot_->resize(size);
+    const QImage image = plot_->grab().toImage();
+    const auto at = [&](double x, double y) {
+      const QPointF pixel = plot_->toPixels({x, y});
+      return image.pixelColor(static_cast<int>(std::round(pixel.x())), static_cast<int>(std::round(pixel.y())));
+    };
+    for (const double tick : {4.0, 8.0, 12.0}) EXPECT_EQ(at(tick, 30), holder_->theme().colours.grid) << tick;
+    for (const double between : {3.0, 5.0, 9.0, 11.0})
+      EXPECT_EQ(at(between + 0.5, 30), holder_->theme().colours.sheet) << between;
+  }
 }
 
 TEST_F(PlotTest, LimitsStayWhileLinesMove) {
